@@ -1,0 +1,110 @@
+import { engineShortfall } from './cautions.ts'
+import { solveOperatingPoint } from './operatingPoint.ts'
+import type { OperatingPointResult } from './operatingPoint.ts'
+import { checkPrepared } from './pressureCheck.ts'
+import type { PressureCheck, Verdict } from './pressureCheck.ts'
+import { prepareRig } from './preparedRig.ts'
+import type { Compressor, Rig, Site } from './rig.ts'
+
+const sixteenthM = 0.0254 / 16
+
+/** The rig with another nozzle bore at one outlet. */
+export function withBore(rig: Rig, outletIndex: number, boreM: number): Rig {
+  return {
+    ...rig,
+    outlets: rig.outlets.map((outlet, i) =>
+      i === outletIndex ? { ...outlet, nozzle: { ...outlet.nozzle, boreM } } : outlet,
+    ),
+  }
+}
+
+/** checkPressure against a gauge target, so that it means the same at every altitude. */
+function checkGauge(rig: Rig, site: Site, targetGaugePa: number): PressureCheck {
+  return checkPrepared(prepareRig(rig, site), targetGaugePa)
+}
+
+const isReached = (verdict: Verdict) => verdict === 'holds' || verdict === 'barely-holds'
+
+export interface FittingCompressor<T> {
+  candidate: T
+  check: PressureCheck
+  /** 0 to 1 */
+  engineShortfall: number
+}
+
+/**
+ * The smallest of the compressors offered with which the rig holds its target.
+ *
+ * Inputs   rig, site · target Pa gauge · candidates from small to large, each with the compressor it stands for
+ * Result   the first whose verdict is Holds (5 % air margin) and whose engine is not short; or, where none is, the first
+ *          that at least barely holds; or null
+ * Checked  tests/shared/airflow/fit.test.ts
+ */
+export function findSmallestCompressor<T>(
+  rig: Rig,
+  site: Site,
+  targetGaugePa: number,
+  candidates: readonly T[],
+  compressorOf: (candidate: T) => Compressor,
+): FittingCompressor<T> | null {
+  let barely: FittingCompressor<T> | null = null
+  for (const candidate of candidates) {
+    const trial = { ...rig, compressor: compressorOf(candidate) }
+    const prepared = prepareRig(trial, site)
+    const check = checkPrepared(prepared, targetGaugePa)
+    if (!isReached(check.verdict)) continue
+    const shortfall = engineShortfall(trial.compressor, prepared, site.altitudeM)
+    const found = { candidate, check, engineShortfall: shortfall }
+    if (check.verdict === 'holds' && shortfall === 0) return found
+    barely ??= found
+  }
+  return barely
+}
+
+export interface FittingNozzle {
+  /** bore in sixteenths of an inch */
+  number: number
+  check: PressureCheck
+  /** the same nozzle one sixteenth worn */
+  wornCheck: PressureCheck
+}
+
+/**
+ * The largest nozzle number that reaches the target new, and the largest that still does one sixteenth worn.
+ *
+ * Inputs   rig, site · target Pa gauge · which outlet · numbers from small to large
+ * Result   null where even the smallest does not reach it
+ * Checked  tests/shared/airflow/fit.test.ts
+ */
+export function findLargestNozzles(
+  rig: Rig,
+  site: Site,
+  targetGaugePa: number,
+  outletIndex: number,
+  numbers: readonly number[],
+): { whenNew: FittingNozzle | null; whenWorn: FittingNozzle | null } {
+  let whenNew: FittingNozzle | null = null
+  let whenWorn: FittingNozzle | null = null
+  for (const number of numbers) {
+    const at = (sixteenths: number) =>
+      checkGauge(withBore(rig, outletIndex, sixteenths * sixteenthM), site, targetGaugePa)
+    const check = at(number)
+    if (!isReached(check.verdict)) break
+    const wornCheck = at(number + 1)
+    whenNew = { number, check, wornCheck }
+    if (isReached(wornCheck.verdict)) whenWorn = whenNew
+  }
+  return { whenNew, whenWorn }
+}
+
+/** What the other outlets see when one is shut: the operating point without it; null when it is the only one. */
+export function solveWithOutletShut(
+  rig: Rig,
+  site: Site,
+  shutIndex: number,
+): (OperatingPointResult & { openIndexes: number[] }) | null {
+  const openIndexes = rig.outlets.map((_, i) => i).filter((i) => i !== shutIndex)
+  if (openIndexes.length === 0) return null
+  const outlets = openIndexes.map((i) => rig.outlets[i]!)
+  return { ...solveOperatingPoint({ ...rig, outlets }, site), openIndexes }
+}

@@ -1,0 +1,95 @@
+export interface RootSearch {
+  /** residual, rising with x; NaN where x is closed (a choked line) */
+  evaluate: (x: number) => number
+  /** the next guess after an open x; anything outside the bracket is answered by bisection */
+  propose: (x: number, residual: number) => number
+  /** residual below zero (or x = 0) at low, zero or above (or closed) at high */
+  low: number
+  high: number
+  guess: number
+  /** the bracket ends at this part of x + offset */
+  widthTolerance: number
+  /** and the residual at this */
+  residualTolerance: number
+  /** a residual this small stops at once, as an exact zero does */
+  zeroTolerance: number
+  /** added to x when the width is judged: the ambient pressure where x is gauge */
+  offset?: number
+  /** which side of the root a closed x lies on */
+  closedSide?: 'low' | 'high'
+}
+
+export interface Root {
+  x: number
+  residual: number
+  evaluations: number
+  isMet: boolean
+  low: number
+  high: number
+}
+
+const mostEvaluations = 200
+
+/**
+ * Safeguarded search for the root of a rising function with a closed side.
+ *
+ * Guesses come from the caller, who knows the shape of the function; the bracket keeps every one of them honest. When
+ * a guess moves less than the width allowed, it is pushed across the root, so that the bracket closes in one more
+ * step. Three steps without halving the bracket are followed by a bisection.
+ *
+ * Ends     bracket ≤ widthTolerance and residual ≤ residualTolerance, or residual ≤ zeroTolerance, or nothing left
+ *          between the ends; never more than 200 evaluations
+ * Result   the best x seen; isMet false when the root lies in the closed part
+ */
+export function findRoot(search: RootSearch): Root {
+  const { evaluate, propose, widthTolerance, residualTolerance, zeroTolerance } = search
+  const offset = search.offset ?? 0
+  const isClosedHigh = (search.closedSide ?? 'high') === 'high'
+  let { low, high } = search
+  let x = search.guess > low && search.guess <= high ? search.guess : (low + high) / 2
+  let bestX = NaN
+  let bestResidual = Infinity
+  let checkedWidth = high - low
+  let sinceHalved = 0
+  let evaluations = 0
+  while (evaluations < mostEvaluations) {
+    const residual = evaluate(x)
+    evaluations++
+    let next = NaN
+    if (Number.isNaN(residual)) {
+      if (isClosedHigh) high = x
+      else low = x
+    } else {
+      if (Math.abs(residual) < Math.abs(bestResidual)) {
+        bestX = x
+        bestResidual = residual
+      }
+      if (Math.abs(residual) <= zeroTolerance) break
+      if (residual < 0) low = x
+      else high = x
+      const allowed = widthTolerance * (high + offset)
+      if (high - low <= allowed && Math.abs(bestResidual) <= residualTolerance) break
+      next = propose(x, residual)
+      if (Math.abs(next - x) < 0.4 * allowed) next = residual < 0 ? x + 0.8 * allowed : x - 0.8 * allowed
+    }
+    const width = high - low
+    if (width <= checkedWidth / 2) {
+      checkedWidth = width
+      sinceHalved = 0
+    } else if (++sinceHalved >= 3) next = NaN
+    if (!(next > low && next < high)) {
+      next = low + width / 2
+      sinceHalved = 0
+      if (next <= low || next >= high) break
+    }
+    x = next
+  }
+  return {
+    x: bestX,
+    residual: bestResidual,
+    evaluations,
+    isMet: Math.abs(bestResidual) <= residualTolerance,
+    low,
+    high,
+  }
+}

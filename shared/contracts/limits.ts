@@ -1,0 +1,56 @@
+/**
+ * What a check may contain, in the units its fields carry. Plain data: the schemas, the screens and the tests
+ * read the same ranges, and the client gets them without the schema library.
+ */
+export interface Range {
+  readonly min: number
+  readonly max: number
+}
+
+/** Pressures are gauge, except the barometer's, which is absolute. */
+export const checkLimits = {
+  altitudeM: { min: -430, max: 5000 },
+  airTemperatureC: { min: -40, max: 60 },
+  relativeHumidityPct: { min: 0, max: 100 },
+  barometerKpa: { min: 50, max: 110 },
+  freeAirM3Min: { min: 0.05, max: 150 },
+  curvePressureKpa: { min: 0, max: 4000 },
+  setPressureKpa: { min: 100, max: 3500 },
+  unloadPressureKpa: { min: 110, max: 4000 },
+  conditionFactor: { min: 0.3, max: 1.2 },
+  lineTemperatureRiseK: { min: 0, max: 100 },
+  insideDiameterMm: { min: 3, max: 200 },
+  lengthM: { min: 0, max: 1000 },
+  roughnessMm: { min: 0, max: 1 },
+  lossK: { min: 0, max: 1000 },
+  mediaFactor: { min: 1, max: 5 },
+  boreMm: { min: 1, max: 60 },
+  dischargeCoefficient: { min: 0.3, max: 1 },
+  airTakenFirstM3Min: { min: 0, max: 50 },
+  regulatorKpa: { min: 10, max: 3500 },
+  targetNozzlePressureKpa: { min: 10, max: 3500 },
+} as const satisfies Record<string, Range>
+
+export const minOutlets = 1
+export const maxOutlets = 4
+/** in one line: the air line, or the line of one outlet */
+export const maxElements = 12
+export const minCurvePoints = 1
+export const maxCurvePoints = 20
+/** hoods and tools that take their air first */
+export const maxDraws = 8
+export const maxNameLength = 60
+/** an unload pressure at or beside the set pressure would make the delivery jump */
+export const minUnloadAboveSetKpa = 10
+
+const millimetresPer64th = 25.4 / 64
+const snapToleranceMm = 0.0005
+
+/**
+ * A length typed or stored with few decimals is the 64th it stands for: 9.525 and 9.5254 mm are both 3/8 in.
+ * Other lengths pass unchanged.
+ */
+export function snapTo64ths(lengthMm: number): number {
+  const nearest = (Math.round(lengthMm / millimetresPer64th) * 25.4) / 64
+  return Math.abs(nearest - lengthMm) <= snapToleranceMm ? nearest : lengthMm
+}

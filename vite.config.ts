@@ -1,0 +1,81 @@
+import { readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { brotliCompressSync, constants, gzipSync } from 'node:zlib'
+import vue from '@vitejs/plugin-vue'
+import type { Plugin } from 'vite'
+import { defineConfig } from 'vitest/config'
+
+const compressible = /\.(html|js|css|svg|json|txt|webmanifest|map)$/
+const worthCompressingBytes = 512
+
+/** Leaves a .br and a .gz beside each text file, so that the server never compresses the client itself. */
+function precompress(): Plugin {
+  let outDir = 'dist'
+  return {
+    name: 'precompress',
+    apply: 'build',
+    enforce: 'post',
+    configResolved(config) {
+      outDir = config.build.outDir
+    },
+    closeBundle: {
+      order: 'post',
+      sequential: true,
+      handler() {
+        for (const entry of readdirSync(outDir, { recursive: true, withFileTypes: true })) {
+          const path = join(entry.parentPath, entry.name)
+          if (!entry.isFile() || !compressible.test(entry.name)) continue
+          const content = readFileSync(path)
+          if (content.length < worthCompressingBytes) continue
+          writeFileSync(`${path}.gz`, gzipSync(content, { level: 9 }))
+          const params = { [constants.BROTLI_PARAM_QUALITY]: constants.BROTLI_MAX_QUALITY }
+          writeFileSync(`${path}.br`, brotliCompressSync(content, { params }))
+        }
+      },
+    },
+  }
+}
+
+export default defineConfig({
+  plugins: [vue(), precompress()],
+  publicDir: 'src/public',
+  server: { port: 5173, strictPort: true, proxy: { '/api': `http://127.0.0.1:${process.env.PORT ?? 3000}` } },
+  build: {
+    outDir: 'dist',
+    target: 'es2022',
+    modulePreload: { polyfill: false },
+    rolldownOptions: {
+      output: {
+        codeSplitting: {
+          // Without this the runtime of Vue lands in whichever library chunk is made first.
+          includeDependenciesRecursively: false,
+          groups: [
+            {
+              name: 'vue',
+              test: /node_modules[\\/](@vue|vue|vue-router|pinia|vue-i18n|@intlify)[\\/]/,
+              priority: 2,
+            },
+            { name: 'chart', test: /node_modules[\\/](chart\.js|vue-chartjs|chartjs-|@kurkle)/, priority: 1 },
+          ],
+        },
+      },
+    },
+  },
+  test: {
+    projects: [
+      {
+        extends: true,
+        test: {
+          name: 'node',
+          environment: 'node',
+          include: ['tests/{reference,shared,server}/**/*.test.ts'],
+          testTimeout: 60_000,
+        },
+      },
+      {
+        extends: true,
+        test: { name: 'client', environment: 'happy-dom', include: ['tests/src/**/*.test.ts'] },
+      },
+    ],
+  },
+})
