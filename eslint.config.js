@@ -7,9 +7,18 @@ import typescript from 'typescript-eslint'
 const otherRooms = {
   server: { regex: '(^|/)server/', message: 'The server is not known here: ask it over the API.' },
   client: { regex: '(^|/)src/', message: 'The client is not known here.' },
-  contracts: { regex: '(^|/)contracts/', message: 'Calculations know nothing of the API: shared/check translates.' },
-  packages: { regex: '^(?!\\.{1,2}/|#shared/)', message: 'shared/ stands alone: import only from within it.' },
-  packagesButZod: { regex: '^(?!\\.{1,2}/|#shared/|zod$)', message: 'Contracts may use zod and nothing else.' },
+  contracts: {
+    regex: '(^|/)contracts/',
+    message: 'Calculations know nothing of the API: shared/check and shared/form translate.',
+  },
+  packages: {
+    regex: '^(?!\\.{1,2}/|#shared/)',
+    message: 'shared/ stands alone: import only from within it.',
+  },
+  packagesButZod: {
+    regex: '^(?!\\.{1,2}/|#shared/|zod$)',
+    message: 'Contracts may use zod and nothing else.',
+  },
   checkSchemas: {
     regex: '(^|/)contracts/(?!limits|cautions)',
     allowTypeImports: true,
@@ -21,9 +30,15 @@ function forbid(...rooms) {
   return { '@typescript-eslint/no-restricted-imports': ['error', { patterns: rooms }] }
 }
 
-const impureGlobals = ['process', 'window', 'document', 'navigator', 'fetch', 'localStorage', 'setTimeout'].map(
-  (name) => ({ name, message: 'shared/ is pure: no clock, network, storage, DOM or Node.' }),
-)
+const impureGlobals = [
+  'process',
+  'window',
+  'document',
+  'navigator',
+  'fetch',
+  'localStorage',
+  'setTimeout',
+].map((name) => ({ name, message: 'shared/ is pure: no clock, network, storage, DOM or Node.' }))
 const impureProperties = [
   { object: 'Date', property: 'now', message: 'shared/ has no clock: pass the time in.' },
   { object: 'Math', property: 'random', message: 'shared/ is repeatable: pass the number in.' },
@@ -49,7 +64,23 @@ export default typescript.config(
       eqeqeq: 'error',
     },
   },
-  { files: ['**/*.mjs', '*.js'], languageOptions: { globals: { console: 'readonly', process: 'readonly', URL: 'readonly' } } },
+  {
+    files: ['**/*.mjs', '*.js'],
+    languageOptions: {
+      globals: { console: 'readonly', process: 'readonly', URL: 'readonly', performance: 'readonly' },
+    },
+  },
+  {
+    files: ['src/public/*.js'],
+    languageOptions: {
+      sourceType: 'script',
+      globals: Object.fromEntries(
+        ['document', 'localStorage', 'matchMedia', 'navigator', 'location'].map((name) => [name, 'readonly']),
+      ),
+    },
+  },
+  // An absent optional prop is undefined, and the types say so.
+  { files: ['**/*.vue'], rules: { 'vue/require-default-prop': 'off' } },
   { files: ['**/*.vue'], rules: { 'vue/block-lang': ['error', { script: { lang: 'ts' }, template: {} }] } },
   {
     files: ['shared/**/*.ts'],
@@ -60,9 +91,12 @@ export default typescript.config(
       'no-restricted-syntax': ['error', ...impureSyntax],
     },
   },
-  { files: ['shared/contracts/**/*.ts'], rules: forbid(otherRooms.packagesButZod, otherRooms.server, otherRooms.client) },
   {
-    files: ['shared/check/**/*.ts'],
+    files: ['shared/contracts/**/*.ts'],
+    rules: forbid(otherRooms.packagesButZod, otherRooms.server, otherRooms.client),
+  },
+  {
+    files: ['shared/{check,form}/**/*.ts'],
     rules: forbid(otherRooms.packages, otherRooms.server, otherRooms.client, otherRooms.checkSchemas),
   },
   { files: ['server/**/*.ts'], rules: forbid(otherRooms.client) },

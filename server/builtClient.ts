@@ -30,7 +30,9 @@ function readIfThere(path: string): Buffer | undefined {
 /** The built client is a few hundred kilobytes: it is read once and served from memory. */
 export function readBuiltClient(clientDir: string): BuiltClient {
   const files = new Map<string, BuiltFile>()
-  const entries = existsSync(clientDir) ? readdirSync(clientDir, { recursive: true, withFileTypes: true }) : []
+  const entries = existsSync(clientDir)
+    ? readdirSync(clientDir, { recursive: true, withFileTypes: true })
+    : []
   for (const entry of entries) {
     if (!entry.isFile() || entry.name.startsWith('.') || /\.(br|gz)$/.test(entry.name)) continue
     const path = join(entry.parentPath, entry.name)

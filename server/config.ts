@@ -9,9 +9,13 @@ export const projectRoot = fileURLToPath(new URL('..', import.meta.url))
 const minSecretLength = 32
 const packageSchema = z.object({ version: z.string() })
 
+const isAddressOrRange = (text: string) =>
+  /^[^/]+(\/\d{1,3})?$/.test(text) && isIP(text.split('/')[0] ?? '') > 0
+
 /** How many proxies to trust, or which: Express decides from it whose address a request carries. */
 const trustProxySchema = z
-  .union([z.literal('off'), z.string().regex(/^\d{1,2}$/), z.string().regex(/^[\da-fA-F.:/]+(,[\da-fA-F.:/]+)*$/)], {
+  .string()
+  .refine((value) => value === 'off' || /^\d{1,2}$/.test(value) || value.split(',').every(isAddressOrRange), {
     error: 'must be "off", the number of proxies in front, or their addresses separated by commas',
   })
   .transform((value) => {
@@ -73,7 +77,9 @@ export interface Config {
 /** What is wrong with the environment, for a person to read: no stack belongs to it. */
 export class ConfigError extends Error {
   constructor(readonly complaints: string[]) {
-    super(['Sixteenth cannot start. In its environment:', ...complaints.map((line) => `  - ${line}`)].join('\n'))
+    super(
+      ['Sixteenth cannot start. In its environment:', ...complaints.map((line) => `  - ${line}`)].join('\n'),
+    )
     this.name = 'ConfigError'
   }
 }
@@ -100,7 +106,8 @@ export function readConfig(environment: Record<string, string | undefined>): Con
   const isProduction = NODE_ENV === 'production'
   const defaultLogLevel = { production: 'info', development: 'warn', test: 'silent' }[NODE_ENV]
   return {
-    version: packageSchema.parse(JSON.parse(readFileSync(resolve(projectRoot, 'package.json'), 'utf8'))).version,
+    version: packageSchema.parse(JSON.parse(readFileSync(resolve(projectRoot, 'package.json'), 'utf8')))
+      .version,
     isProduction,
     port: PORT,
     host: HOST,

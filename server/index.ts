@@ -25,20 +25,25 @@ function start(): void {
     console.log(`Sixteenth is at http://${host}:${port}`)
   })
 
+  // A terminal signals every process of ours, and the start script passes its own on: the second one is no news.
+  let isStopping = false
   function shutDown(): void {
+    if (isStopping) return
+    isStopping = true
     setTimeout(() => server.closeAllConnections(), graceMs).unref()
     server.close(() => database.close())
     server.closeIdleConnections()
   }
-  process.once('SIGTERM', shutDown)
-  process.once('SIGINT', shutDown)
+  process.on('SIGTERM', shutDown)
+  process.on('SIGINT', shutDown)
 }
 
 function explainListenError(error: NodeJS.ErrnoException, host: string, port: number): string {
   if (error.code === 'EADDRINUSE') {
     return `Port ${port} is already in use. Stop what uses it, or choose another: PORT=${port + 1} npm start`
   }
-  if (error.code === 'EACCES') return `Port ${port} needs more rights than this account has. Choose one over 1023.`
+  if (error.code === 'EACCES')
+    return `Port ${port} needs more rights than this account has. Choose one over 1023.`
   return `Cannot listen on ${host}, port ${port}: ${error.message}`
 }
 

@@ -28,7 +28,10 @@ function describeSize(issue: z.core.$ZodIssueTooBig | z.core.$ZodIssueTooSmall, 
   const bound = isOver ? `at most ${issue.maximum}` : `at least ${issue.minimum}`
   if (issue.origin === 'array') {
     const code = isOver ? ('too-many' as const) : ('too-few' as const)
-    return { code, message: `${nameOf(path)} may hold ${bound}.`.replace('may hold at least', 'must hold at least') }
+    return {
+      code,
+      message: `${nameOf(path)} may hold ${bound}.`.replace('may hold at least', 'must hold at least'),
+    }
   }
   if (issue.origin === 'string') {
     return { code: 'too-long' as const, message: `${nameOf(path)} may have ${bound} characters.` }
@@ -44,7 +47,8 @@ function describeType(expected: string, value: unknown, path: Path): Omit<FieldE
     return { code: 'not-finite', message: `${name} must be a finite number.` }
   }
   const article = /^[aeiou]/.test(expected) ? 'an' : 'a'
-  const words = { array: 'a list', object: 'an object', string: 'a text' }[expected] ?? `${article} ${expected}`
+  const words =
+    { array: 'a list', object: 'an object', string: 'a text' }[expected] ?? `${article} ${expected}`
   const absent = value === null ? ' null is not the same as leaving it out.' : ''
   return { code: 'wrong-type', message: `${name} must be ${words}.${absent}` }
 }

@@ -1,4 +1,18 @@
-import { createApp } from 'vue'
-import App from './App.vue'
+import './assets/fonts.css'
+import './assets/tokens.css'
+import './assets/base.css'
+import { createWebHistory } from 'vue-router'
+import { createSixteenth } from './createSixteenth.ts'
+import { loadSpanish } from './i18n/index.ts'
 
-createApp(App).mount('#app')
+/** What theme.js set before the first paint: the language that was chosen on this device. */
+const isSpanish = document.documentElement.lang === 'es'
+
+async function start() {
+  const { app, router } = createSixteenth(createWebHistory(), isSpanish ? await loadSpanish() : undefined)
+  await router.isReady()
+  app.mount('#app')
+  document.documentElement.classList.remove('is-starting')
+}
+
+void start()

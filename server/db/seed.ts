@@ -16,7 +16,9 @@ export function holdsDemo(database: Database): boolean {
 export function prepareDemo(database: Database, config: Config): void {
   if (config.isProduction) {
     if (holdsDemo(database)) {
-      throw new ConfigError(['DATA_DIR holds the demo, which production refuses: give it a folder of its own'])
+      throw new ConfigError([
+        'DATA_DIR holds the demo, which production refuses: give it a folder of its own',
+      ])
     }
     return
   }

@@ -12,6 +12,11 @@ export function checkRateLimit(perMinute: number | null): RequestHandler {
     // Whose word to take for an address is decided by TRUST_PROXY alone.
     validate: { xForwardedForHeader: false },
     handler: (_request, _response, next) =>
-      next(makeProblem('too-many-requests', `At most ${perMinute} checks a minute from one address. Wait a moment.`)),
+      next(
+        makeProblem(
+          'too-many-requests',
+          `At most ${perMinute} checks a minute from one address. Wait a moment.`,
+        ),
+      ),
   })
 }

@@ -6,7 +6,10 @@ import { maxBodyBytes } from './jsonBody.ts'
 /** What Express and its body reader refuse by themselves, in our own codes. */
 function translate(error: unknown): ProblemError {
   if (error instanceof ProblemError) return error
-  const { status, type } = (typeof error === 'object' && error !== null ? error : {}) as Record<string, unknown>
+  const { status, type } = (typeof error === 'object' && error !== null ? error : {}) as Record<
+    string,
+    unknown
+  >
   if (type === 'entity.parse.failed') return makeProblem('bad-json', 'The body is not valid JSON.')
   if (status === 413) return makeProblem('body-too-large', `The body is larger than ${maxBodyBytes} bytes.`)
   if (status === 415) return makeProblem('wrong-content-type', 'The body must be JSON in UTF-8.')

@@ -22,9 +22,15 @@ const refuseOtherTypes: RequestHandler = (request, _response, next) => {
   next(makeProblem('wrong-content-type', 'The body must be JSON, sent as application/json.'))
 }
 
-const refuseEmpty: RequestHandler = (request, _response, next) => {
-  if (request.body === undefined) return next(makeProblem('bad-json', 'The body is empty; it must be JSON.'))
-  next()
+const emptyBody = () => makeProblem('bad-json', 'The body is empty; it must be JSON.')
+
+const refuseAbsent: RequestHandler = (request, _response, next) => {
+  next(request.body === undefined ? emptyBody() : undefined)
+}
+
+/** Express would read a body without content as an empty object. */
+function refuseEmpty(_request: unknown, _response: unknown, content: Buffer): void {
+  if (content.length === 0) throw emptyBody()
 }
 
 const refuseDeep: RequestHandler = (request, _response, next) => {
@@ -36,8 +42,8 @@ const refuseDeep: RequestHandler = (request, _response, next) => {
 export function jsonBody(): RequestHandler[] {
   return [
     refuseOtherTypes,
-    express.json({ limit: maxBodyBytes, strict: false, type: () => true }),
-    refuseEmpty,
+    express.json({ limit: maxBodyBytes, strict: false, type: () => true, verify: refuseEmpty }),
+    refuseAbsent,
     refuseDeep,
   ]
 }

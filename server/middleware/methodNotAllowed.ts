@@ -5,6 +5,11 @@ import { makeProblem } from '../problems.ts'
 export function methodNotAllowed(...allowed: string[]): RequestHandler {
   return (request, response, next) => {
     response.set('Allow', allowed.join(', '))
-    next(makeProblem('method-not-allowed', `${request.method} is not possible here, only ${allowed.join(', ')}.`))
+    next(
+      makeProblem(
+        'method-not-allowed',
+        `${request.method} is not possible here, only ${allowed.join(', ')}.`,
+      ),
+    )
   }
 }

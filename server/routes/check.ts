@@ -11,7 +11,7 @@ export function checkRoutes({ config }: AppContext): Router {
   const router = Router()
   router
     .route('/')
-    .post(checkRateLimit(config.checkRatePerMinute), jsonBody(), (request, response) => {
+    .post(checkRateLimit(config.checkRatePerMinute), ...jsonBody(), (request, response) => {
       response.json(answerCheck(parseBody(checkRequestSchema, request.body)))
     })
     .all(methodNotAllowed('POST'))

@@ -41,7 +41,8 @@ function describeApi(version: string) {
     info: {
       title: 'Sixteenth',
       version,
-      description: 'Air and nozzles for blasters. Pressures are gauge, except the barometer, which is absolute.',
+      description:
+        'Air and nozzles for blasters. Pressures are gauge, except the barometer, which is absolute.',
     },
     servers: [{ url: '/' }],
     paths: {

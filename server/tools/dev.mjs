@@ -5,7 +5,14 @@ import { installIfNeeded, projectRoot } from './prepare.mjs'
 if (!(await installIfNeeded())) process.exit(1)
 
 const children = [
-  ['node_modules/tsx/dist/cli.mjs', 'watch', '--clear-screen=false', '--include', 'migrations/**', 'server/index.ts'],
+  [
+    'node_modules/tsx/dist/cli.mjs',
+    'watch',
+    '--clear-screen=false',
+    '--include',
+    'migrations/**',
+    'server/index.ts',
+  ],
   ['node_modules/vite/bin/vite.js'],
 ].map((args) => spawn(process.execPath, args, { cwd: projectRoot, stdio: 'inherit' }))
 

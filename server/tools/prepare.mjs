@@ -32,7 +32,8 @@ function listFiles(path) {
 
 function hashFiles(paths) {
   const hash = createHash('sha256')
-  for (const path of paths) hash.update(path.slice(projectRoot.length)).update('\0').update(readFileSync(path))
+  for (const path of paths)
+    hash.update(path.slice(projectRoot.length)).update('\0').update(readFileSync(path))
   return hash.digest('hex')
 }
 
@@ -52,12 +53,15 @@ function isInstalledAsLocked() {
   const wanted = JSON.parse(readFileSync(lockFile, 'utf8')).packages
   const installed = JSON.parse(readFileSync(installedLock, 'utf8')).packages
   return Object.entries(wanted).every(
-    ([path, entry]) => path === '' || entry.optional || installed[path]?.version === entry.version,
+    ([path, entry]) =>
+      path === '' || entry.optional || entry.devOptional || installed[path]?.version === entry.version,
   )
 }
 
 /** The compiled database driver fits one version of the Node modules interface only. */
 function isInstalledForThisNode() {
+  if (!existsSync(join(projectRoot, 'node_modules/better-sqlite3/build/Release/better_sqlite3.node')))
+    return false
   return !existsSync(nodeStamp) || readFileSync(nodeStamp, 'utf8') === process.versions.modules
 }
 

@@ -70,7 +70,9 @@ async function runVitest(reportDir) {
 
 function hasBrowserTests() {
   const folder = join(projectRoot, 'tests/e2e')
-  return existsSync(folder) && readdirSync(folder, { recursive: true }).some((name) => /\.spec\.ts$/.test(name))
+  return (
+    existsSync(folder) && readdirSync(folder, { recursive: true }).some((name) => /\.spec\.ts$/.test(name))
+  )
 }
 
 async function runPlaywright(reportDir) {

@@ -56,7 +56,7 @@ const scaleLosses = (line: readonly LineFlow[], factor: number): LineFlow[] =>
     lossK: element.lossK * factor,
   }))
 
-/** The factor on the losses that turns the nozzle's gauge pressure into the compressor's at a flow; NaN when none does. */
+/** The factor on the losses that turns the nozzle's gauge pressure into the compressor's at a flow; NaN when a choke is in the way. */
 function lineFactorFor(
   rig: PreparedRig,
   outletIndex: number,
@@ -64,6 +64,7 @@ function lineFactorFor(
   nozzleGauge: number,
   compressorGauge: number,
 ): number {
+  if (nozzleGauge >= compressorGauge) return 0
   const ambientPa = rig.ambient.pressurePa
   const line = [...rig.airLine, ...rig.outlets[outletIndex]!.line]
   const dropAt = (factor: number) =>
@@ -137,7 +138,9 @@ export function calibrate(rig: Rig, site: Site, readings: GaugeReadings): Calibr
   }
   if (entry >= outlet.regulatorGaugePa - nozzleAccuracy) return neither('regulator-acting')
 
-  const corners = [-1, 1].flatMap((c) => [-1, 1].map((n) => [c * compressorAccuracy, n * nozzleAccuracy] as const))
+  const corners = [-1, 1].flatMap((c) =>
+    [-1, 1].map((n) => [c * compressorAccuracy, n * nozzleAccuracy] as const),
+  )
   const ranged = (value: number, atCorners: number[], range: { min: number; max: number }) => {
     const known = atCorners.filter((x) => !Number.isNaN(x))
     if (!(value >= range.min && value <= range.max)) return null

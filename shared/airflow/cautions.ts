@@ -86,7 +86,8 @@ export function findCautions(
     add('air-only-reading-low', cleanAirDischargeCoefficient / leastCoefficient - 1)
   }
 
-  const compressorPa = check.operatingPoint?.compressorPressurePa ?? check.atTarget?.requiredCompressorPressurePa
+  const compressorPa =
+    check.operatingPoint?.compressorPressurePa ?? check.atTarget?.requiredCompressorPressurePa
   if (compressorPa !== undefined) {
     const gauge = compressorPa - ambient.pressurePa
     if (gauge < lowCompressorGaugePa) add('low-compressor-pressure', 1 - gauge / lowCompressorGaugePa)
@@ -146,4 +147,3 @@ export function waterToDrain(prepared: PreparedRig, check: PressureCheck): numbe
   const held = humidityRatio(saturationPa, compressorPressurePa)
   return Math.max(0, carried - held) * massFlow * 3600
 }
-

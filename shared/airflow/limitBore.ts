@@ -22,7 +22,8 @@ export interface LimitBore {
 
 /** The limit bore of a rig already prepared; see limitBore. */
 export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outletIndex: number): LimitBore {
-  if (rig.firstMassFlow >= rig.openMassFlow) return { boreM: null, limitedBy: 'air', reason: 'air-taken-first' }
+  if (rig.firstMassFlow >= rig.openMassFlow)
+    return { boreM: null, limitedBy: 'air', reason: 'air-taken-first' }
   const outlet = rig.outlets[outletIndex]!
   const nozzle = { ...outlet.nozzle }
   const trial: PreparedRig = {
@@ -60,7 +61,9 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
     residualTolerance: 1e-9,
     zeroTolerance: 1e-14,
   })
-  if (root.isMet) return { boreM: Math.sqrt(root.x), limitedBy: 'air', reason: null }
+  if (root.isMet) {
+    return { boreM: Math.sqrt(root.x), limitedBy: requireAt(root.x).obstacle ?? 'air', reason: null }
+  }
   return { boreM: Math.sqrt(root.low), limitedBy: requireAt(root.high).obstacle, reason: null }
 }
 
@@ -75,7 +78,12 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
  *          the reason when no bore of 1 mm or more reaches the target
  * Errors   none for input in the declared ranges        Checked  tests/shared/airflow/laws.test.ts
  */
-export function limitBore(rig: Rig, site: Site, targetNozzlePressurePa: number, outletIndex: number): LimitBore {
+export function limitBore(
+  rig: Rig,
+  site: Site,
+  targetNozzlePressurePa: number,
+  outletIndex: number,
+): LimitBore {
   const prepared = prepareRig(rig, site)
   return limitBorePrepared(prepared, targetNozzlePressurePa - prepared.ambient.pressurePa, outletIndex)
 }

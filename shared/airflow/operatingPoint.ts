@@ -1,8 +1,9 @@
 import { pressureAtDelivery, deliveryAt } from './compressor.ts'
 import type { Delivery } from './compressor.ts'
-import { elementOutletPressure, findChokedElement, gaugeBeforeLine } from './line.ts'
+import { elementOutletPressure, marchBack } from './line.ts'
+import type { LineFlow, March } from './line.ts'
 import { criticalFlowFunction, gaugeAtMassFlow, isThroatSonic } from './nozzle.ts'
-import { entryGauge, findOutletChoke, outletMassFlow, prepareRig } from './preparedRig.ts'
+import { findOutletChoke, marchOutlet, outletMassFlow, prepareRig } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
 import type { Rig, Site } from './rig.ts'
 import { findRoot } from './rootFinding.ts'
@@ -54,7 +55,7 @@ interface Balance {
 
 const widthTolerance = 1e-9
 const imbalanceTolerance = 1e-8
-/** of full-load delivery: what rounding leaves where the guess is exact */
+/** of full-load delivery at set pressure: what rounding leaves where the guess is exact */
 const roundingTolerance = 2e-15
 
 /**
@@ -86,62 +87,75 @@ function meetDelivery(
   return (pressuresPa[pressuresPa.length - 1]! - pressure0) / pressureSlope
 }
 
-interface March {
-  /** total flow of the outlets kg/s and gauge pressure at the compressor, at x; NaN pressure when choked */
-  at: (x: number) => { massFlow: number; compressorGaugePa: number }
+/** What a guess makes of the rig: total flow of the outlets and the pressures it takes. */
+interface RigState {
+  massFlow: number
+  manifoldGaugePa: number
+  compressorGaugePa: number
+  choked: LineFlow | null
+}
+
+interface RigSearch {
+  /** sets the state at x */
+  march: (x: number, state: RigState) => void
   low: number
   high: number
   guess: number
   /** x of the point from which the first chord is drawn: no flow, no pressure absolute */
   origin: number
-  /** is x a gauge pressure (else a flow) */
+  /** ambient pressure where x is a gauge pressure, 0 where it is a flow */
   offset: number
-  closedSide: 'low' | 'high'
 }
 
 /** One variable, chords through the last two marches, the compressor met exactly: see meetDelivery and findRoot. */
-function balance(rig: PreparedRig, march: March) {
-  const { delivery, firstMassFlow, openMassFlow } = rig
+function balance(rig: PreparedRig, search: RigSearch) {
+  const { delivery, firstMassFlow } = rig
   const ambientPa = rig.ambient.pressurePa
-  let massFlow = 0
-  let pressurePa = 0
-  let earlierX = march.origin
+  const fullLoad = delivery.massFlows[delivery.massFlows.length - 2]!
+  const state: RigState = { massFlow: 0, manifoldGaugePa: 0, compressorGaugePa: 0, choked: null }
+  const best = { ...state }
+  let bestImbalance = Infinity
+  let earlierX = search.origin
   let earlierFlow = 0
   let earlierPa = 0
   const root = findRoot({
     evaluate(x) {
-      const state = march.at(x)
-      massFlow = state.massFlow
-      pressurePa = ambientPa + state.compressorGaugePa
-      return (massFlow + firstMassFlow - deliveryAt(delivery, pressurePa)) / openMassFlow
+      search.march(x, state)
+      const delivered = deliveryAt(delivery, ambientPa + state.compressorGaugePa)
+      const imbalance = (state.massFlow + firstMassFlow - delivered) / fullLoad
+      if (Math.abs(imbalance) < bestImbalance) {
+        bestImbalance = Math.abs(imbalance)
+        Object.assign(best, state)
+      }
+      return imbalance
     },
     propose(x) {
+      const pressurePa = ambientPa + state.compressorGaugePa
       const step = x - earlierX
-      const flowSlope = (massFlow - earlierFlow) / step
+      const flowSlope = (state.massFlow - earlierFlow) / step
       const pressureSlope = (pressurePa - earlierPa) / step
       earlierX = x
-      earlierFlow = massFlow
+      earlierFlow = state.massFlow
       earlierPa = pressurePa
       if (!(flowSlope >= 0 && pressureSlope > 0)) return NaN
       return meetDelivery(
         delivery,
         firstMassFlow,
-        massFlow - flowSlope * x,
+        state.massFlow - flowSlope * x,
         flowSlope,
         pressurePa - pressureSlope * x,
         pressureSlope,
       )
     },
-    low: march.low,
-    high: march.high,
-    guess: march.guess,
+    low: search.low,
+    high: search.high,
+    guess: search.guess,
     widthTolerance,
     residualTolerance: imbalanceTolerance,
     zeroTolerance: roundingTolerance,
-    offset: march.offset,
-    closedSide: march.closedSide,
+    offset: search.offset,
   })
-  return root
+  return { ...best, x: root.x, marches: root.evaluations }
 }
 
 /** One outlet: its flow is the variable, the nozzle pressure and every pressure before it follow. */
@@ -151,63 +165,46 @@ function balanceOneOutlet(rig: PreparedRig): Balance | Reason {
   const { delivery, firstMassFlow } = rig
   const choked = outlet.nozzle.conductance * criticalFlowFunction
   const high = rig.openMassFlow - firstMassFlow
-  const state = { massFlow: 0, compressorGaugePa: 0 }
-  const root = balance(rig, {
-    at(flow) {
+  const back: March = { gaugePa: 0, choked: null }
+  const found = balance(rig, {
+    march(flow, state) {
+      marchOutlet(outlet, flow, back)
+      state.manifoldGaugePa = back.gaugePa
+      marchBack(rig.airLine, flow, ambientPa, back)
       state.massFlow = flow
-      state.compressorGaugePa = gaugeBeforeLine(rig.airLine, flow, entryGauge(outlet, flow), ambientPa)
-      return state
+      state.compressorGaugePa = back.gaugePa
+      state.choked = back.choked
     },
     low: 0,
     high,
     guess: Math.min(high, meetDelivery(delivery, firstMassFlow, 0, 1, 0, 1 / choked)),
     origin: 0,
     offset: 0,
-    closedSide: 'high',
   })
-  const marches = root.evaluations
-  if (root.isMet) {
-    const manifoldGaugePa = entryGauge(outlet, root.x)
-    if (manifoldGaugePa <= outlet.regulatorGaugePa) {
-      const compressorGaugePa = gaugeBeforeLine(rig.airLine, root.x, manifoldGaugePa, ambientPa)
-      return { compressorGaugePa, manifoldGaugePa, massFlows: [root.x], marches }
-    }
-  } else if (outlet.regulatorGaugePa === Infinity) {
-    return chokedReason(rig, root.high)
-  }
-  return balanceHeldOutlet(rig, root.isMet ? null : chokedReason(rig, root.high), marches)
+  if (found.manifoldGaugePa > outlet.regulatorGaugePa) return balanceHeldOutlet(rig, found.marches)
+  return found.choked ? `choked:${found.choked.name}` : { ...found, massFlows: [found.massFlow] }
 }
 
 /** One outlet whose regulator holds: its flow is known, so the compressor's pressure is too, and the march goes down. */
-function balanceHeldOutlet(rig: PreparedRig, unregulated: Reason | null, marches: number): Balance | Reason {
+function balanceHeldOutlet(rig: PreparedRig, marches: number): Balance | Reason {
   const outlet = rig.outlets[0]!
   const ambientPa = rig.ambient.pressurePa
   const massFlow = outletMassFlow(outlet, outlet.regulatorGaugePa, NaN)
-  if (Number.isNaN(massFlow)) return `choked:${findOutletChoke(outlet, outlet.regulatorGaugePa)!.name}`
+  const choked = findOutletChoke(outlet, massFlow)
+  if (choked) return `choked:${choked.name}`
   const compressorPa = pressureAtDelivery(rig.delivery, massFlow + rig.firstMassFlow)
   let pressurePa = compressorPa
   for (const element of rig.airLine) {
     const outletPa = elementOutletPressure(element, massFlow, pressurePa)
-    if (Number.isNaN(outletPa)) return unregulated ?? `choked:${element.name}`
+    if (Number.isNaN(outletPa)) return `choked:${element.name}`
     pressurePa = outletPa
   }
-  const manifoldGaugePa = pressurePa - ambientPa
-  if (!(manifoldGaugePa >= outlet.regulatorGaugePa * (1 - 1e-9))) return unregulated ?? 'short-of-air'
   return {
     compressorGaugePa: compressorPa - ambientPa,
-    manifoldGaugePa,
+    manifoldGaugePa: pressurePa - ambientPa,
     massFlows: [massFlow],
     marches: marches + 1,
   }
-}
-
-function chokedReason(rig: PreparedRig, closedFlow: number): Reason {
-  const outlet = rig.outlets[0]!
-  const ambientPa = rig.ambient.pressurePa
-  const own = findChokedElement(outlet.line, closedFlow, gaugeAtMassFlow(outlet.nozzle, closedFlow), ambientPa)
-  const element =
-    own ?? findChokedElement(rig.airLine, closedFlow, entryGauge(outlet, closedFlow), ambientPa)
-  return `choked:${element!.name}`
 }
 
 /** Flows of all outlets fed at one gauge pressure; the earlier flows are the first guesses. */
@@ -220,53 +217,46 @@ export function outletFlows(rig: PreparedRig, manifoldGaugePa: number, flows: nu
   return total
 }
 
+/** The first outlet line that is choked at these flows names its element; null when all are open. */
+export function findOutletsChoke(rig: PreparedRig, flows: readonly number[]): LineFlow | null {
+  for (let i = 0; i < rig.outlets.length; i++) {
+    const choked = findOutletChoke(rig.outlets[i]!, flows[i]!)
+    if (choked) return choked
+  }
+  return null
+}
+
 /** Several outlets: the manifold's gauge pressure is the variable, each outlet's flow an inner search. */
 function balanceManifold(rig: PreparedRig): Balance | Reason {
   const { outlets, delivery, firstMassFlow } = rig
   const ambientPa = rig.ambient.pressurePa
   const flows: number[] = outlets.map(() => NaN)
-  const state = { massFlow: 0, compressorGaugePa: 0 }
+  const back: March = { gaugePa: 0, choked: null }
   let lastGauge = NaN
-  const at = (gauge: number) => {
-    const scale = (ambientPa + gauge) / (ambientPa + lastGauge)
-    for (let i = 0; i < flows.length; i++) flows[i]! *= scale
-    lastGauge = gauge
-    state.massFlow = outletFlows(rig, gauge, flows)
-    state.compressorGaugePa = gaugeBeforeLine(rig.airLine, state.massFlow, gauge, ambientPa)
-    return state
-  }
   let conductance = 0
   for (const outlet of outlets) conductance += outlet.nozzle.conductance
-  const high = delivery.pressuresPa[delivery.pressuresPa.length - 1]! - ambientPa
-  const guess = meetDelivery(delivery, firstMassFlow, 0, conductance * criticalFlowFunction, 0, 1) - ambientPa
-  const shape = { at, high, guess, origin: -ambientPa, offset: ambientPa }
-  let root = balance(rig, { ...shape, low: 0, closedSide: 'high' })
-  let marches = root.evaluations
-  const closedGauge = root.high
-  if (!root.isMet && outlets.some((outlet) => outlet.regulatorGaugePa < high)) {
-    root = balance(rig, { ...shape, low: closedGauge, guess: high, closedSide: 'low' })
-    marches += root.evaluations
-  }
-  if (!root.isMet) return chokedManifoldReason(rig, closedGauge)
-  at(root.x)
-  return {
-    compressorGaugePa: state.compressorGaugePa,
-    manifoldGaugePa: root.x,
-    massFlows: flows,
-    marches,
-  }
-}
-
-/** The element that closes a manifold pressure: one of an outlet's line, or one of the air line. */
-export function chokedManifoldReason(rig: PreparedRig, manifoldGaugePa: number): Reason {
-  let total = 0
-  for (const outlet of rig.outlets) {
-    const flow = outletMassFlow(outlet, manifoldGaugePa, NaN)
-    if (Number.isNaN(flow)) return `choked:${findOutletChoke(outlet, manifoldGaugePa)?.name ?? ''}`
-    total += flow
-  }
-  const element = findChokedElement(rig.airLine, total, manifoldGaugePa, rig.ambient.pressurePa)
-  return element ? `choked:${element.name}` : 'short-of-air'
+  const found = balance(rig, {
+    march(gauge, state) {
+      const scale = (ambientPa + gauge) / (ambientPa + lastGauge)
+      for (let i = 0; i < flows.length; i++) flows[i]! *= scale
+      lastGauge = gauge
+      state.manifoldGaugePa = gauge
+      state.massFlow = outletFlows(rig, gauge, flows)
+      back.gaugePa = gauge
+      back.choked = null
+      marchBack(rig.airLine, state.massFlow, ambientPa, back)
+      state.compressorGaugePa = back.gaugePa
+      state.choked = back.choked
+    },
+    low: 0,
+    high: delivery.pressuresPa[delivery.pressuresPa.length - 1]! - ambientPa,
+    guess: meetDelivery(delivery, firstMassFlow, 0, conductance * criticalFlowFunction, 0, 1) - ambientPa,
+    origin: -ambientPa,
+    offset: ambientPa,
+  })
+  outletFlows(rig, found.x, flows)
+  const choked = findOutletsChoke(rig, flows) ?? found.choked
+  return choked ? `choked:${choked.name}` : { ...found, massFlows: flows }
 }
 
 /** The operating point of a rig already prepared; see solveOperatingPoint. */

@@ -2,8 +2,8 @@ import { resolveAmbient } from './ambient.ts'
 import type { Ambient } from './ambient.ts'
 import { airTakenFirstMass, deliveryAt, prepareDelivery } from './compressor.ts'
 import type { Delivery } from './compressor.ts'
-import { findChokedElement, gaugeBeforeLine, prepareElement } from './line.ts'
-import type { LineFlow } from './line.ts'
+import { findChokedElement, marchBack, prepareElement } from './line.ts'
+import type { LineFlow, March } from './line.ts'
 import { gaugeAtMassFlow, massFlowAtGauge, prepareNozzle } from './nozzle.ts'
 import type { NozzleFlow } from './nozzle.ts'
 import type { LineElement, Rig, Site } from './rig.ts'
@@ -47,34 +47,37 @@ export function prepareRig(rig: Rig, site: Site): PreparedRig {
       line: prepareLine(outlet.line, `outlet-${index + 1}-line`),
       nozzle: prepareNozzle(outlet.nozzle, lineTemperatureK, ambient.pressurePa),
       boreM: outlet.nozzle.boreM,
-      regulatorGaugePa:
-        outlet.regulatorPa === undefined ? Infinity : outlet.regulatorPa - ambient.pressurePa,
+      regulatorGaugePa: outlet.regulatorPa === undefined ? Infinity : outlet.regulatorPa - ambient.pressurePa,
     })),
   }
 }
 
-/** Gauge pressure before an outlet's line when its nozzle passes this flow; NaN when its line is choked. */
-export function entryGauge(outlet: PreparedOutlet, massFlow: number): number {
-  const nozzleGauge = gaugeAtMassFlow(outlet.nozzle, massFlow)
-  return gaugeBeforeLine(outlet.line, massFlow, nozzleGauge, outlet.nozzle.ambientPa)
+/** The march from an outlet's nozzle, passing this flow, back to the manifold; see marchBack. */
+export function marchOutlet(outlet: PreparedOutlet, massFlow: number, march: March): void {
+  march.gaugePa = gaugeAtMassFlow(outlet.nozzle, massFlow)
+  march.choked = null
+  marchBack(outlet.line, massFlow, outlet.nozzle.ambientPa, march)
 }
 
 /**
  * Flow of one outlet whose line is fed at a gauge pressure (its regulator applied): the march inverted.
  *
- * Result   kg/s; NaN when its line chokes before this pressure is reached
+ * Result   kg/s; where an element is choked it is what the choke passes, to be looked for with findOutletChoke
  */
 export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, guess: number): number {
   const feedGauge = Math.min(manifoldGaugePa, outlet.regulatorGaugePa)
   if (feedGauge <= 0) return 0
   const most = massFlowAtGauge(outlet.nozzle, feedGauge)
   if (outlet.line.length === 0) return most
-  const { ambientPa } = outlet.nozzle
-  const feedPa = ambientPa + feedGauge
+  const feedPa = outlet.nozzle.ambientPa + feedGauge
+  const march: March = { gaugePa: 0, choked: null }
   let earlierFlow = 0
   let earlierPa = 0
-  const root = findRoot({
-    evaluate: (flow) => (entryGauge(outlet, flow) - feedGauge) / feedGauge,
+  return findRoot({
+    evaluate(flow) {
+      marchOutlet(outlet, flow, march)
+      return (march.gaugePa - feedGauge) / feedGauge
+    },
     propose(flow, residual) {
       const pressure = feedPa + feedGauge * residual
       const next = flow + ((feedPa - pressure) * (flow - earlierFlow)) / (pressure - earlierPa)
@@ -84,28 +87,15 @@ export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, 
     },
     low: 0,
     high: most,
-    guess,
+    guess: guess > 0 ? guess : most,
     widthTolerance: 1e-12,
     residualTolerance: 1e-11,
     zeroTolerance: 4e-15,
-  })
-  return root.isMet ? root.x : NaN
+  }).x
 }
 
-/** Which element chokes when an outlet is fed at this gauge pressure: the one that closes at its largest open flow. */
-export function findOutletChoke(outlet: PreparedOutlet, manifoldGaugePa: number): LineFlow | null {
-  const feedGauge = Math.min(manifoldGaugePa, outlet.regulatorGaugePa)
-  let open = 0
-  let closed = massFlowAtGauge(outlet.nozzle, Math.max(0, feedGauge))
-  for (let step = 0; step < 60; step++) {
-    const middle = (open + closed) / 2
-    if (Number.isNaN(entryGauge(outlet, middle))) closed = middle
-    else open = middle
-  }
-  return findChokedElement(
-    outlet.line,
-    closed,
-    gaugeAtMassFlow(outlet.nozzle, closed),
-    outlet.nozzle.ambientPa,
-  )
+/** The choked element nearest the nozzle of an outlet that passes this flow, or null. */
+export function findOutletChoke(outlet: PreparedOutlet, massFlow: number): LineFlow | null {
+  const nozzleGauge = gaugeAtMassFlow(outlet.nozzle, massFlow)
+  return findChokedElement(outlet.line, massFlow, nozzleGauge, outlet.nozzle.ambientPa)
 }

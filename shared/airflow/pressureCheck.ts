@@ -1,9 +1,10 @@
 import { deliveryAt, fullLoadDeliveryAt } from './compressor.ts'
-import { findChokedElement, gaugeBeforeLine } from './line.ts'
-import { gaugeAtMassFlow, massFlowAtGauge } from './nozzle.ts'
-import { chokedManifoldReason, outletFlows, solvePrepared } from './operatingPoint.ts'
+import { findChokedElement, marchBack } from './line.ts'
+import type { LineFlow, March } from './line.ts'
+import { massFlowAtGauge } from './nozzle.ts'
+import { findOutletsChoke, outletFlows, solvePrepared } from './operatingPoint.ts'
 import type { OperatingPoint, Reason } from './operatingPoint.ts'
-import { entryGauge, prepareRig } from './preparedRig.ts'
+import { prepareRig } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
 import type { Rig, Site } from './rig.ts'
 
@@ -45,8 +46,8 @@ export interface PressureCheck extends TargetResult {
  * What the rig needs for every nozzle to see at least the target.
  *
  * The manifold stands at the largest pressure that any outlet needs; the others then run above the target. Where the
- * air line is choked at that pressure and a regulator holds some outlet, the smallest higher pressure at which it
- * opens is taken.
+ * air line is choked at that pressure and open at a higher one, as behind a held regulator, that one is taken, and the
+ * air line stays the obstacle to any more.
  *
  *   air margin = (S − N) / D
  *   N  nozzles + air taken first,  S  delivery at the compressor pressure this needs,  D  full-load delivery there
@@ -55,39 +56,39 @@ export interface PressureCheck extends TargetResult {
  */
 export function requireTarget(rig: PreparedRig, targetGaugePa: number): TargetResult {
   const ambientPa = rig.ambient.pressurePa
-  let manifoldGauge = 0
+  const march: March = { gaugePa: 0, choked: null }
   const flows: number[] = []
+  let manifoldGauge = 0
   for (let i = 0; i < rig.outlets.length; i++) {
     const outlet = rig.outlets[i]!
     const flow = massFlowAtGauge(outlet.nozzle, targetGaugePa)
-    const entry = entryGauge(outlet, flow)
-    if (Number.isNaN(entry)) {
-      const nozzleGauge = gaugeAtMassFlow(outlet.nozzle, flow)
-      const element = findChokedElement(outlet.line, flow, nozzleGauge, ambientPa)!
-      return { atTarget: null, reason: `choked:${element.name}`, obstacle: 'line' }
-    }
-    if (entry > outlet.regulatorGaugePa * (1 + 1e-12)) {
+    march.gaugePa = targetGaugePa
+    marchBack(outlet.line, flow, ambientPa, march)
+    if (march.choked) return closedAt(march.choked, 'line')
+    if (march.gaugePa > outlet.regulatorGaugePa * (1 + 1e-12)) {
       return { atTarget: null, reason: `regulator:${i + 1}`, obstacle: 'regulator' }
     }
     flows.push(flow)
-    manifoldGauge = Math.max(manifoldGauge, entry)
+    manifoldGauge = Math.max(manifoldGauge, march.gaugePa)
   }
-  let total = rig.outlets.length === 1 ? flows[0]! : outletFlows(rig, manifoldGauge, flows)
-  if (Number.isNaN(total)) {
-    return { atTarget: null, reason: chokedManifoldReason(rig, manifoldGauge), obstacle: 'line' }
+  let total = flows[0]!
+  if (rig.outlets.length > 1) {
+    total = outletFlows(rig, manifoldGauge, flows)
+    const choked = findOutletsChoke(rig, flows)
+    if (choked) return closedAt(choked, 'line')
   }
-  let compressorGauge = gaugeBeforeLine(rig.airLine, total, manifoldGauge, ambientPa)
-  if (Number.isNaN(compressorGauge)) {
+  march.gaugePa = manifoldGauge
+  marchBack(rig.airLine, total, ambientPa, march)
+  const isOpenedHigher = march.choked !== null
+  if (march.choked) {
     const opened = openAirLine(rig, manifoldGauge, flows)
-    if (opened === null) {
-      const element = findChokedElement(rig.airLine, total, manifoldGauge, ambientPa)!
-      return { atTarget: null, reason: `choked:${element.name}`, obstacle: 'air-line' }
-    }
+    if (opened === null) return closedAt(march.choked, 'air-line')
     manifoldGauge = opened
     total = outletFlows(rig, manifoldGauge, flows)
-    compressorGauge = gaugeBeforeLine(rig.airLine, total, manifoldGauge, ambientPa)
+    march.gaugePa = manifoldGauge
+    marchBack(rig.airLine, total, ambientPa, march)
   }
-  const compressorPa = ambientPa + compressorGauge
+  const compressorPa = ambientPa + march.gaugePa
   const required = total + rig.firstMassFlow
   const delivered = deliveryAt(rig.delivery, compressorPa)
   const fullLoad = fullLoadDeliveryAt(rig.delivery, compressorPa)
@@ -104,23 +105,28 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number): TargetRe
       airMargin: (delivered - required) / fullLoad,
     },
     reason: isShort ? shortReason : null,
-    obstacle: isShort ? 'air' : null,
+    obstacle: isOpenedHigher ? 'air-line' : isShort ? 'air' : null,
   }
 }
 
-/** The smallest manifold pressure over a closed one at which held regulators let the air line pass, Pa gauge, or null. */
+function closedAt(element: LineFlow, obstacle: 'line' | 'air-line'): TargetResult {
+  return { atTarget: null, reason: `choked:${element.name}`, obstacle }
+}
+
+/**
+ * A manifold pressure over a closed one from which the air line is open, Pa gauge: between the closed one and the
+ * operating point, so that the verdict agrees with it; null when the rig does not run above the closed pressure.
+ */
 function openAirLine(rig: PreparedRig, closedGaugePa: number, flows: number[]): number | null {
   const ambientPa = rig.ambient.pressurePa
-  const isOpen = (gauge: number) =>
-    !Number.isNaN(gaugeBeforeLine(rig.airLine, outletFlows(rig, gauge, flows), gauge, ambientPa))
-  if (!rig.outlets.some((outlet) => outlet.regulatorGaugePa < Infinity)) return null
+  const { operatingPoint } = solvePrepared(rig)
   let closed = closedGaugePa
-  let open = rig.delivery.pressuresPa[rig.delivery.pressuresPa.length - 1]! - ambientPa
-  if (open <= closed || !isOpen(open)) return null
-  for (let step = 0; step < 60; step++) {
+  let open = operatingPoint ? operatingPoint.manifoldPressurePa - ambientPa : 0
+  if (open <= closed) return null
+  while (open - closed > 1e-10 * (ambientPa + open)) {
     const middle = (open + closed) / 2
-    if (isOpen(middle)) open = middle
-    else closed = middle
+    if (findChokedElement(rig.airLine, outletFlows(rig, middle, flows), middle, ambientPa)) closed = middle
+    else open = middle
   }
   return open
 }

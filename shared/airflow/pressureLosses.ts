@@ -70,7 +70,8 @@ export interface WiderElement {
 }
 
 /**
- * Which single hose, taken one usual size wider, gives the lowest nozzle the most.
+ * Which single hose, taken one usual size wider, gives the lowest nozzle the most. In the outlets' lines it is the hose
+ * at one place of the first outlet's, taken as wide at the same place of the others.
  *
  * Inputs   rig, site · the usual inside diameters, rising, m · may this element be exchanged?
  * Result   the best exchange, or null when none gains anything (below the set pressure of a flat nameplate none can)
@@ -108,9 +109,13 @@ export function findBestWiderElement(
     })),
   )
   rig.outlets[0]?.line.forEach((element, index) =>
-    consider(element, 'outlet-line', index, (wider) => ({
+    consider(element, 'outlet-line', index, ({ insideDiameterM }) => ({
       ...rig,
-      outlets: rig.outlets.map((outlet) => ({ ...outlet, line: replaceAt(outlet.line, index, wider) })),
+      outlets: rig.outlets.map((outlet) => {
+        const own = outlet.line[index]
+        if (!own || own.insideDiameterM >= insideDiameterM) return outlet
+        return { ...outlet, line: replaceAt(outlet.line, index, { ...own, insideDiameterM }) }
+      }),
     })),
   )
   return best

@@ -1,5 +1,5 @@
 export interface RootSearch {
-  /** residual, rising with x; NaN where x is closed (a choked line) */
+  /** residual, rising with x; NaN where x is closed, which only the high end of the range may be */
   evaluate: (x: number) => number
   /** the next guess after an open x; anything outside the bracket is answered by bisection */
   propose: (x: number, residual: number) => number
@@ -15,14 +15,13 @@ export interface RootSearch {
   zeroTolerance: number
   /** added to x when the width is judged: the ambient pressure where x is gauge */
   offset?: number
-  /** which side of the root a closed x lies on */
-  closedSide?: 'low' | 'high'
 }
 
 export interface Root {
   x: number
   residual: number
   evaluations: number
+  /** false when the root lies in the closed part */
   isMet: boolean
   low: number
   high: number
@@ -31,23 +30,23 @@ export interface Root {
 const mostEvaluations = 200
 
 /**
- * Safeguarded search for the root of a rising function with a closed side.
+ * Safeguarded search for the root of a rising function.
  *
  * Guesses come from the caller, who knows the shape of the function; the bracket keeps every one of them honest. When
  * a guess moves less than the width allowed, it is pushed across the root, so that the bracket closes in one more
  * step. Three steps without halving the bracket are followed by a bisection.
  *
  * Ends     bracket ≤ widthTolerance and residual ≤ residualTolerance, or residual ≤ zeroTolerance, or nothing left
- *          between the ends; never more than 200 evaluations
- * Result   the best x seen; isMet false when the root lies in the closed part
+ *          between the ends (the function jumps there: the root is the jump); never more than 200 evaluations
+ * Result   the best x seen
  */
 export function findRoot(search: RootSearch): Root {
   const { evaluate, propose, widthTolerance, residualTolerance, zeroTolerance } = search
   const offset = search.offset ?? 0
-  const isClosedHigh = (search.closedSide ?? 'high') === 'high'
   let { low, high } = search
+  let isHighClosed = false
   let x = search.guess > low && search.guess <= high ? search.guess : (low + high) / 2
-  let bestX = NaN
+  let bestX = x
   let bestResidual = Infinity
   let checkedWidth = high - low
   let sinceHalved = 0
@@ -57,8 +56,8 @@ export function findRoot(search: RootSearch): Root {
     evaluations++
     let next = NaN
     if (Number.isNaN(residual)) {
-      if (isClosedHigh) high = x
-      else low = x
+      high = x
+      isHighClosed = true
     } else {
       if (Math.abs(residual) < Math.abs(bestResidual)) {
         bestX = x
@@ -66,7 +65,10 @@ export function findRoot(search: RootSearch): Root {
       }
       if (Math.abs(residual) <= zeroTolerance) break
       if (residual < 0) low = x
-      else high = x
+      else {
+        high = x
+        isHighClosed = false
+      }
       const allowed = widthTolerance * (high + offset)
       if (high - low <= allowed && Math.abs(bestResidual) <= residualTolerance) break
       next = propose(x, residual)
@@ -88,7 +90,7 @@ export function findRoot(search: RootSearch): Root {
     x: bestX,
     residual: bestResidual,
     evaluations,
-    isMet: Math.abs(bestResidual) <= residualTolerance,
+    isMet: !isHighClosed || Math.abs(bestResidual) <= residualTolerance,
     low,
     high,
   }

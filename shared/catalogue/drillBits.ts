@@ -1,4 +1,4 @@
-import { BORE_TOLERANCE_MM, MM_PER_INCH } from '#shared/units/quantities.ts'
+import { BORE_TOLERANCE_MM, mmOfInches } from '#shared/units/quantities.ts'
 import { formatBoreFraction } from '#shared/units/format.ts'
 import type { Sourced } from './source.ts'
 
@@ -67,13 +67,13 @@ const NUMBER_LETTER_INCHES: readonly (readonly [string, number])[] = [
   ['Z', 0.413],
 ]
 
-/** first/per, (first+1)/per … last/per of `size` mm */
-function steps(first: number, last: number, per: number, size: number): number[] {
-  return Array.from({ length: last - first + 1 }, (_, index) => ((first + index) / per) * size)
+/** first/per, (first + 1)/per … last/per */
+function steps(first: number, last: number, per: number): number[] {
+  return Array.from({ length: last - first + 1 }, (_, index) => (first + index) / per)
 }
 
 function fractionalBits(per: 64 | 32): Bit[] {
-  const sizes = steps((per * 3) / 16, (per * 3) / 4, per, MM_PER_INCH)
+  const sizes = steps((per * 3) / 16, (per * 3) / 4, per).map(mmOfInches)
   return sizes.map((mm) => ({ name: formatBoreFraction(mm) ?? '', mm }))
 }
 
@@ -84,9 +84,9 @@ function metricBits(sizes: readonly number[]): Bit[] {
 const BITS: Record<BitSet, readonly Bit[]> = {
   'fractional-64': fractionalBits(64),
   'fractional-32': fractionalBits(32),
-  'metric-0.5': metricBits(steps(10, 38, 2, 1)),
-  'metric-0.1': metricBits([...steps(48, 140, 10, 1), ...steps(29, 38, 2, 1)]),
-  'number-letter': NUMBER_LETTER_INCHES.map(([name, inches]) => ({ name, mm: inches * MM_PER_INCH })),
+  'metric-0.5': metricBits(steps(10, 38, 2)),
+  'metric-0.1': metricBits([...steps(48, 140, 10), ...steps(29, 38, 2)]),
+  'number-letter': NUMBER_LETTER_INCHES.map(([name, inches]) => ({ name, mm: mmOfInches(inches) })),
 }
 
 /** The bits of a set from 3/16 to 3/4 in, ascending. */

@@ -1,4 +1,4 @@
-import { M_PER_FOOT, MM_PER_INCH } from '#shared/units/quantities.ts'
+import { M_PER_FOOT, mmOfInches } from '#shared/units/quantities.ts'
 import type { Sourced } from './source.ts'
 
 /** A hose bore by name. The metric name is a rounded one: the inch value is the one computed with. */
@@ -10,12 +10,12 @@ export interface HoseSize {
 
 /** Common practice, no source: the sizes blast and air hose is sold and asked for in. */
 export const HOSE_SIZES: readonly HoseSize[] = [
-  { inchName: '1/2', metricName: '13', insideDiameterMm: 0.5 * MM_PER_INCH },
-  { inchName: '3/4', metricName: '19', insideDiameterMm: 0.75 * MM_PER_INCH },
-  { inchName: '1', metricName: '25', insideDiameterMm: MM_PER_INCH },
-  { inchName: '1 1/4', metricName: '32', insideDiameterMm: 1.25 * MM_PER_INCH },
-  { inchName: '1 1/2', metricName: '38', insideDiameterMm: 1.5 * MM_PER_INCH },
-  { inchName: '2', metricName: '50', insideDiameterMm: 2 * MM_PER_INCH },
+  { inchName: '1/2', metricName: '13', insideDiameterMm: mmOfInches(0.5) },
+  { inchName: '3/4', metricName: '19', insideDiameterMm: mmOfInches(0.75) },
+  { inchName: '1', metricName: '25', insideDiameterMm: mmOfInches(1) },
+  { inchName: '1 1/4', metricName: '32', insideDiameterMm: mmOfInches(1.25) },
+  { inchName: '1 1/2', metricName: '38', insideDiameterMm: mmOfInches(1.5) },
+  { inchName: '2', metricName: '50', insideDiameterMm: mmOfInches(2) },
 ]
 
 export const HOSE_LENGTHS: readonly { feet: number; lengthM: number }[] = [10, 25, 50, 100].map((feet) => ({
@@ -32,7 +32,7 @@ export const LINE_SOURCE: Sourced = {
 export const LOSS_K_PER_COUPLING = 1
 /** A pot with 1 1/4 in piping; measure it. */
 export const POT_DEFAULT: Readonly<LossElement> = {
-  insideDiameterMm: 1.25 * MM_PER_INCH,
+  insideDiameterMm: mmOfInches(1.25),
   lengthM: 0,
   lossK: 8,
 }

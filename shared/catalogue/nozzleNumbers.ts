@@ -1,4 +1,4 @@
-import { BORE_TOLERANCE_MM, MM_PER_INCH } from '#shared/units/quantities.ts'
+import { BORE_TOLERANCE_MM, mmOfInches } from '#shared/units/quantities.ts'
 import type { Sourced } from './source.ts'
 
 /** Common practice, no source: a nozzle's number is its bore in sixteenths of an inch. */
@@ -11,7 +11,7 @@ export const NOZZLE_NUMBERS = [2, 3, 4, 5, 6, 7, 8, 9, 10, 11, 12, 13, 14, 15, 1
 
 /** Bore of a nozzle number, n · 25.4 / 16 mm. */
 export function boreMmOfNumber(number: number): number {
-  return (number / 16) * MM_PER_INCH
+  return mmOfInches(number / 16)
 }
 
 /** The nozzle number of this bore, within 0.0005 mm, or null. */

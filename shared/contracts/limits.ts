@@ -43,14 +43,15 @@ export const maxNameLength = 60
 /** an unload pressure at or beside the set pressure would make the delivery jump */
 export const minUnloadAboveSetKpa = 10
 
-const millimetresPer64th = 25.4 / 64
-const snapToleranceMm = 0.0005
+/** half a thousandth, and what binary numbers add to it: 1.588 is 1/16 in, 1.5875 exactly */
+const snapToleranceMm = 0.0005 + 1e-9
 
 /**
  * A length typed or stored with few decimals is the 64th it stands for: 9.525 and 9.5254 mm are both 3/8 in.
  * Other lengths pass unchanged.
  */
 export function snapTo64ths(lengthMm: number): number {
-  const nearest = (Math.round(lengthMm / millimetresPer64th) * 25.4) / 64
+  // Whole numbers up to the one division: 25.4 is not exact in binary, and 24/64 in must be 9.525 itself.
+  const nearest = (Math.round((lengthMm * 640) / 254) * 254) / 640
   return Math.abs(nearest - lengthMm) <= snapToleranceMm ? nearest : lengthMm
 }

@@ -2,7 +2,6 @@ import {
   baseUnit,
   displayUnit,
   findUnit,
-  MM_PER_INCH,
   QUANTITY_KINDS,
   toBase,
   type QuantityKind,
@@ -63,8 +62,8 @@ const NOZZLE_NUMBER =
 const NOZZLE_NUMBER_UNIT: Unit = {
   symbol: 'No.',
   system: 'us',
-  times: MM_PER_INCH,
-  over: 16,
+  times: 127,
+  over: 5 * 16,
   shift: 0,
   spellings: [],
 }
@@ -79,8 +78,9 @@ export function parseQuantity(kind: QuantityKind, text: string, options: ParseOp
   if (trimmed.length > MAX_QUANTITY_TEXT) {
     return { ok: false, problem: 'too-long', detail: { limit: MAX_QUANTITY_TEXT } }
   }
-  const prefix = NOZZLE_NUMBER.exec(trimmed)
-  const number = readNumber(prefix ? trimmed.slice(prefix[0].length) : trimmed)
+  const typed = trimmed.normalize('NFC')
+  const prefix = NOZZLE_NUMBER.exec(typed)
+  const number = readNumber(prefix ? typed.slice(prefix[0].length) : typed)
   if (!number) return { ok: false, problem: 'not-a-number' }
   if (prefix) return readNozzleNumber(kind, number, options)
   if (number.rest === '') return readBareNumber(kind, number, options)

@@ -18,7 +18,7 @@ const KPA_PER_INCH_OF_MERCURY = 3.386388640341
 /** mechanical horsepower, 550 ft·lbf/s */
 const KW_PER_HORSEPOWER = 0.7456998715822702
 
-/** base = (value + shift) · times / over */
+/** base = (value + shift) · times / over; an inch is 127/5 mm, so that 3/16 in is the double nearest to 4.7625 mm */
 export interface Unit {
   symbol: string
   system: UnitSystem
@@ -54,7 +54,7 @@ export function normaliseUnit(text: string): string {
     .replace(/\.$/, '')
 }
 
-const inch = unit('in', 'us', MM_PER_INCH, '" inch inches pulg pulgada pulgadas')
+const inch = unit('in', 'us', 127, '" inch inches pulg pulgada pulgadas', { over: 5 })
 const millimetre = unit(
   'mm',
   'metric',
@@ -64,13 +64,13 @@ const millimetre = unit(
 const boreUnits = [
   millimetre,
   inch,
-  unit('thou', 'us', MM_PER_INCH, 'mils', { over: 1000 }),
+  unit('thou', 'us', 127, 'mils', { over: 5000 }),
   unit('cm', 'metric', 10, ''),
 ]
 const lengthUnits = [
   unit('m', 'metric', 1, 'meter meters metre metres metro metros'),
-  unit('ft', 'us', M_PER_FOOT, "' foot feet pie pies"),
-  unit('in', 'us', MM_PER_INCH, '" inch inches pulg pulgada pulgadas', { over: 1000 }),
+  unit('ft', 'us', 381, "' foot feet pie pies", { over: 1250 }),
+  unit('in', 'us', 127, '" inch inches pulg pulgada pulgadas', { over: 5000 }),
   unit('cm', 'metric', 1, '', { over: 100 }),
   unit('mm', 'metric', 1, '', { over: 1000 }),
 ]
@@ -209,17 +209,25 @@ export function fromBase(to: Unit, base: number): number {
   return (base * to.over) / to.times - to.shift
 }
 
+/** The double nearest to so many inches in mm, for any binary fraction of an inch. */
+export function mmOfInches(inches: number): number {
+  return toBase(inch, inches)
+}
+
 /** Bores within this of a 64th of an inch, or of each other, are the same bore. */
 export const BORE_TOLERANCE_MM = 0.0005
 
+const LARGEST_FRACTION_MM = 1000
+
 /** How many 64ths of an inch this is, where it is a whole number of them within the bore tolerance; else null. */
 export function sixtyFourthsOf(mm: number): number | null {
+  if (mm > LARGEST_FRACTION_MM) return null
   const count = Math.round((mm / MM_PER_INCH) * 64)
-  return count > 0 && Math.abs((count / 64) * MM_PER_INCH - mm) <= BORE_TOLERANCE_MM ? count : null
+  return count > 0 && Math.abs(mmOfInches(count / 64) - mm) <= BORE_TOLERANCE_MM ? count : null
 }
 
 /** A bore within 0.0005 mm of a 64th of an inch becomes exactly that 64th; any other is left as it is. */
 export function snapBoreMm(mm: number): number {
   const count = sixtyFourthsOf(mm)
-  return count === null ? mm : (count / 64) * MM_PER_INCH
+  return count === null ? mm : mmOfInches(count / 64)
 }

@@ -8,7 +8,9 @@ const projectRoot = join(import.meta.dirname, '../..')
 const port = 3117
 
 function findChromium(): string {
-  return execFileSync('sh', ['-c', 'command -v chromium || command -v chromium-browser'], { encoding: 'utf8' }).trim()
+  return execFileSync('sh', ['-c', 'command -v chromium || command -v chromium-browser'], {
+    encoding: 'utf8',
+  }).trim()
 }
 
 export default defineConfig({

@@ -6,7 +6,9 @@ export function makeCheckRequest(overrides: Partial<CheckRequest> = {}): CheckRe
     site: { altitudeM: 0, airTemperatureC: 20 },
     compressor: { ratedFreeAirM3Min: 5.24, setPressureKpa: 690, unloadPressureKpa: 830 },
     airLine: [{ name: 'air hose', insideDiameterMm: 31.75, lengthM: 15 }],
-    outlets: [{ line: [{ name: 'blast hose', insideDiameterMm: 31.75, lengthM: 15 }], nozzle: { boreMm: 6.35 } }],
+    outlets: [
+      { line: [{ name: 'blast hose', insideDiameterMm: 31.75, lengthM: 15 }], nozzle: { boreMm: 6.35 } },
+    ],
     airTakenFirst: [],
     targetNozzlePressureKpa: 620,
     ...overrides,

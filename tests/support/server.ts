@@ -7,10 +7,12 @@ import { createApp } from '../../server/app.ts'
 import { readConfig } from '../../server/config.ts'
 import type { Config } from '../../server/config.ts'
 import { openDatabase } from '../../server/db/client.ts'
+import type { Database } from '../../server/db/client.ts'
 import { createLogger } from '../../server/middleware/requestLog.ts'
 
 export interface RunningServer {
   address: string
+  database: Database
   stop: () => Promise<void>
 }
 
@@ -28,6 +30,7 @@ export async function startServer(overrides: Partial<Config> = {}): Promise<Runn
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve))
   const { port } = server.address() as AddressInfo
   return {
+    database,
     address: `http://127.0.0.1:${port}`,
     async stop() {
       server.closeAllConnections()

@@ -1,0 +1,234 @@
+import { deliveryAt, pressureAtDelivery } from './compressor.ts'
+import { elementOutletPressure, findChokedElement, gaugeBeforeLine } from './line.ts'
+import type { LineFlow } from './line.ts'
+import { gaugeAtMassFlow, massFlowAtGauge } from './nozzle.ts'
+import type { Reason } from './operatingPoint.ts'
+import { checkPrepared } from './pressureCheck.ts'
+import type { Verdict } from './pressureCheck.ts'
+import { withPreparedBore } from './preparedBore.ts'
+import { outletMassFlow } from './preparedRig.ts'
+import type { PreparedOutlet, PreparedRig } from './preparedRig.ts'
+
+export interface AirPoint {
+  /** Pa gauge, at the nozzle whose bore is varied */
+  nozzleGaugePa: number
+  /** m³/s, air taken first and every other outlet included */
+  freeAirM3S: number
+}
+
+export interface AirCurve {
+  points: AirPoint[]
+  /** why the curve ends before the range does; null where it runs through it */
+  end: Reason | null
+}
+
+export interface DrawCurve extends AirCurve {
+  boreM: number
+  /** with this bore, at the target */
+  verdict: Verdict
+  operatingPoint: AirPoint | null
+}
+
+export interface DeliveryAndDraw {
+  lowestGaugePa: number
+  highestGaugePa: number
+  delivery: AirCurve
+  draws: DrawCurve[]
+}
+
+const stepsOfDelivery = 32
+const stepsOfFall = 16
+const stepsOfDraw = 24
+
+/** Gauge pressure before an outlet's line when its nozzle passes this flow; NaN when an element is choked. */
+function gaugeBeforeOutlet({ line, nozzle }: PreparedOutlet, massFlow: number): number {
+  return gaugeBeforeLine(line, massFlow, gaugeAtMassFlow(nozzle, massFlow), nozzle.ambientPa)
+}
+
+/** What all outlets but one draw from a manifold, kg/s; NaN when one of their lines is choked. */
+function drawOfOthers(rig: PreparedRig, outletIndex: number, manifoldGaugePa: number): number {
+  let total = 0
+  rig.outlets.forEach((outlet, index) => {
+    if (index === outletIndex) return
+    const flow = outletMassFlow(outlet, manifoldGaugePa, NaN)
+    total += Number.isNaN(gaugeBeforeOutlet(outlet, flow)) ? NaN : flow
+  })
+  return total
+}
+
+/** Gauge pressure after a row of elements from the gauge pressure before it; NaN when one of them is choked. */
+function gaugeAfterLine(
+  line: readonly LineFlow[],
+  massFlow: number,
+  gaugePa: number,
+  ambientPa: number,
+): number {
+  if (massFlow === 0) return gaugePa
+  let pressurePa = ambientPa + gaugePa
+  for (const element of line) pressurePa = elementOutletPressure(element, massFlow, pressurePa)
+  return pressurePa - ambientPa
+}
+
+/** Compressor pressures at which its delivery is worth knowing: evenly, and every corner of its curve. */
+function deliveryPressures(rig: PreparedRig): number[] {
+  const { delivery, firstMassFlow, ambient } = rig
+  const top = pressureAtDelivery(delivery, firstMassFlow)
+  if (Number.isNaN(top)) return []
+  const spread = (from: number, to: number, steps: number) =>
+    Array.from({ length: steps + 1 }, (_, step) => from + ((to - from) * step) / steps)
+  const setPa = delivery.pressuresPa[delivery.pressuresPa.length - 2]!
+  const corners = delivery.pressuresPa.filter((pressure) => pressure > ambient.pressurePa && pressure < top)
+  const fall = setPa < top ? spread(setPa, top, stepsOfFall) : []
+  const all = [...spread(ambient.pressurePa, top, stepsOfDelivery), ...corners, ...fall]
+  return [...new Set(all)].sort((a, b) => a - b)
+}
+
+/**
+ * What reaches one nozzle from the compressor, whatever its bore: the compressor's pressure less what the line takes.
+ *
+ *   at each compressor pressure p:  ṁ = delivery(p) − air taken first,  nozzle pressure = p − losses(ṁ)
+ *
+ * The nozzle's bore does not enter, so every draw meets this curve exactly at its operating point.
+ *
+ * Inputs   rig, prepared · which outlet
+ * Result   points of rising nozzle pressure; end names the element that is choked below the first of them
+ * Checked  tests/shared/airflow/drawCurves.test.ts
+ */
+export function traceDelivery(rig: PreparedRig, outletIndex: number): AirCurve {
+  const { ambient, delivery, firstMassFlow } = rig
+  const outlet = rig.outlets[outletIndex]!
+  const points: AirPoint[] = []
+  let end: Reason | null = null
+  for (const pressurePa of deliveryPressures(rig)) {
+    const total = Math.max(0, deliveryAt(delivery, pressurePa) - firstMassFlow)
+    const gauge = pressurePa - ambient.pressurePa
+    const manifold = gaugeAfterLine(rig.airLine, total, gauge, ambient.pressurePa)
+    const own = total - (manifold > 0 ? drawOfOthers(rig, outletIndex, manifold) : 0)
+    if (own < 0) break
+    const feed = Math.min(manifold, outlet.regulatorGaugePa)
+    const nozzleGaugePa = gaugeAfterLine(outlet.line, own, feed, ambient.pressurePa)
+    if (nozzleGaugePa >= 0) {
+      points.push({ nozzleGaugePa, freeAirM3S: (total + firstMassFlow) / ambient.dryAirDensity })
+    } else if (Number.isNaN(nozzleGaugePa)) {
+      end =
+        chokedForwards(rig.airLine, total, gauge, ambient.pressurePa) ??
+        chokedForwards(outlet.line, own, feed, ambient.pressurePa)
+    }
+  }
+  return { points, end }
+}
+
+/** The first element that a march from the compressor cannot pass. */
+function chokedForwards(
+  line: readonly LineFlow[],
+  massFlow: number,
+  gaugePa: number,
+  ambientPa: number,
+): Reason | null {
+  let pressurePa = ambientPa + gaugePa
+  for (const element of line) {
+    pressurePa = elementOutletPressure(element, massFlow, pressurePa)
+    if (Number.isNaN(pressurePa)) return `choked:${element.name}`
+  }
+  return null
+}
+
+/** What the rig draws with one nozzle at a gauge pressure, or why it cannot stand there. */
+function drawAt(rig: PreparedRig, outletIndex: number, nozzleGaugePa: number): AirPoint | Reason {
+  const { ambient, firstMassFlow } = rig
+  const outlet = rig.outlets[outletIndex]!
+  const flow = massFlowAtGauge(outlet.nozzle, nozzleGaugePa)
+  const manifold = gaugeBeforeOutlet(outlet, flow)
+  if (Number.isNaN(manifold)) {
+    const nozzleGauge = gaugeAtMassFlow(outlet.nozzle, flow)
+    return `choked:${findChokedElement(outlet.line, flow, nozzleGauge, ambient.pressurePa)!.name}`
+  }
+  if (manifold > outlet.regulatorGaugePa * (1 + 1e-9)) return `regulator:${outletIndex + 1}`
+  const total = flow + drawOfOthers(rig, outletIndex, manifold)
+  if (Number.isNaN(gaugeBeforeLine(rig.airLine, total, manifold, ambient.pressurePa))) {
+    const element = findChokedElement(rig.airLine, total, manifold, ambient.pressurePa)
+    return element ? `choked:${element.name}` : 'short-of-air'
+  }
+  return { nozzleGaugePa, freeAirM3S: (total + firstMassFlow) / ambient.dryAirDensity }
+}
+
+/**
+ * What the rig draws over the pressure at one nozzle, with one bore in it.
+ *
+ *   ṁ = nozzle(p) + the other outlets at the manifold pressure this takes + air taken first
+ *
+ * Inputs   rig, prepared · which outlet · bore m · range Pa gauge
+ * Result   points of rising pressure; end where a line chokes or a regulator holds before the range ends
+ * Checked  tests/shared/airflow/drawCurves.test.ts
+ */
+export function traceDraw(
+  rig: PreparedRig,
+  outletIndex: number,
+  boreM: number,
+  lowestGaugePa: number,
+  highestGaugePa: number,
+): AirCurve {
+  const trial = withPreparedBore(rig, outletIndex, boreM)
+  const points: AirPoint[] = []
+  for (let step = 0; step <= stepsOfDraw; step++) {
+    const gauge = lowestGaugePa + ((highestGaugePa - lowestGaugePa) * step) / stepsOfDraw
+    const drawn = drawAt(trial, outletIndex, gauge)
+    if (typeof drawn === 'string') return { points, end: drawn }
+    points.push(drawn)
+  }
+  return { points, end: null }
+}
+
+/**
+ * Delivery and draw over one nozzle's pressure, in a range that shows the target and every operating point.
+ *
+ * Inputs   rig, prepared · which outlet · bores m · target Pa gauge
+ * Result   the delivery, and a draw with its operating point for each bore
+ * Checked  tests/shared/airflow/drawCurves.test.ts
+ */
+export function traceDeliveryAndDraw(
+  rig: PreparedRig,
+  outletIndex: number,
+  boresM: readonly number[],
+  targetGaugePa: number,
+): DeliveryAndDraw {
+  const checks = boresM.map((boreM) =>
+    checkPrepared(withPreparedBore(rig, outletIndex, boreM), targetGaugePa),
+  )
+  const operatingPoints = checks.map(
+    ({ operatingPoint }): AirPoint | null =>
+      operatingPoint && {
+        nozzleGaugePa: operatingPoint.outlets[outletIndex]!.nozzlePressurePa - rig.ambient.pressurePa,
+        freeAirM3S: operatingPoint.freeAirM3S,
+      },
+  )
+  const gauges = operatingPoints.flatMap((point) => (point ? [point.nozzleGaugePa] : []))
+  const lowestGaugePa = Math.min(0.55 * targetGaugePa, ...gauges.map((gauge) => 0.85 * gauge))
+  const highestGaugePa = Math.max(1.2 * targetGaugePa, ...gauges.map((gauge) => 1.06 * gauge))
+  return {
+    lowestGaugePa,
+    highestGaugePa,
+    delivery: traceDelivery(rig, outletIndex),
+    draws: boresM.map((boreM, index) => ({
+      boreM,
+      verdict: checks[index]!.verdict,
+      operatingPoint: operatingPoints[index]!,
+      ...traceDraw(rig, outletIndex, boreM, lowestGaugePa, highestGaugePa),
+    })),
+  }
+}
+
+/**
+ * Free air of a curve at a nozzle pressure, straight between its points.
+ *
+ * Inputs   curve, of rising pressure · Pa gauge        Result  m³/s, or null where the curve does not reach
+ */
+export function freeAirOnCurve({ points }: AirCurve, nozzleGaugePa: number): number | null {
+  const index = points.findIndex((point) => point.nozzleGaugePa >= nozzleGaugePa)
+  const after = points[index]
+  if (!after) return null
+  const before = points[index - 1]
+  if (!before) return after.nozzleGaugePa === nozzleGaugePa ? after.freeAirM3S : null
+  const part = (nozzleGaugePa - before.nozzleGaugePa) / (after.nozzleGaugePa - before.nozzleGaugePa)
+  return before.freeAirM3S + (after.freeAirM3S - before.freeAirM3S) * part
+}

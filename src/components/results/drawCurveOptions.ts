@@ -1,0 +1,185 @@
+import type { ChartData, ChartOptions } from 'chart.js'
+import type { AnnotationOptions } from 'chartjs-plugin-annotation'
+import { spreadApart } from './spreadApart.ts'
+import type { TokenColours } from './useTokenColours.ts'
+
+export interface ChartPoint {
+  x: number
+  y: number
+}
+
+export interface ChartLine {
+  label: string
+  points: ChartPoint[]
+  colour: string
+  dash: number[]
+  width: number
+  /** a word where the line stops before the chart does */
+  endWord: string | null
+  operatingPoint: ChartPoint | null
+}
+
+export interface ChartPicture {
+  delivery: ChartPoint[]
+  deliveryLabel: string
+  lines: ChartLine[]
+  lowest: number
+  highest: number
+  target: number
+  targetLabel: string
+}
+
+export const chartHeight = 300
+/** the chart less its axis and the room above it */
+const plotHeight = 250
+const labelGap = 16
+const labelRoom = 86
+
+/** Air from a little under the least draw to a little over the most, but never so far that the delivery lies flat. */
+function airRange({ delivery, lines, lowest, highest }: ChartPicture) {
+  const inRange = delivery.filter(({ x }) => x >= lowest && x <= highest)
+  const delivered = Math.max(0, ...inRange.map(({ y }) => y))
+  const drawn = lines.flatMap(({ points }) => points.map(({ y }) => y))
+  const most = Math.max(delivered, Math.min(Math.max(0, ...drawn), 2 * (delivered || Infinity)))
+  const least = Math.min(most, ...drawn)
+  return { min: 0.8 * least, max: 1.08 * most || 1 }
+}
+
+/** A line's last point that is still on the chart. */
+function endOf(points: readonly ChartPoint[], max: number): ChartPoint | undefined {
+  return points.findLast(({ y }) => y <= max)
+}
+
+export function chartData(
+  { delivery, lines }: ChartPicture,
+  colours: TokenColours,
+): ChartData<'line', ChartPoint[]> {
+  const plain = { pointRadius: 0, borderJoinStyle: 'round' as const }
+  return {
+    labels: [],
+    datasets: [
+      { label: 'delivery', data: delivery, borderColor: colours.ink, borderWidth: 3.5, ...plain },
+      ...lines.map(({ label, points, colour, dash, width }) => ({
+        label,
+        data: points,
+        borderColor: colour,
+        borderDash: dash,
+        borderWidth: width,
+        ...plain,
+      })),
+    ],
+  }
+}
+
+/** The labels at the line ends, the operating points and the target. */
+function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number, min: number) {
+  const { delivery, lines, lowest, highest, target } = picture
+  const font = { family: colours.font, size: 12, weight: 600 as const }
+  const found: Record<string, AnnotationOptions> = {
+    target: {
+      type: 'line',
+      scaleID: 'x',
+      value: target,
+      borderColor: colours.muted,
+      borderDash: [3, 4],
+      borderWidth: 1.5,
+    },
+    targetLabel: {
+      type: 'label',
+      xValue: target,
+      yValue: max,
+      content: picture.targetLabel,
+      position: { x: target > (lowest + highest) / 2 ? 'end' : 'start', y: 'end' },
+      color: colours.muted,
+      font,
+      padding: { left: 2, right: 2, top: 0, bottom: 3 },
+    },
+  }
+  const start = delivery.find(({ x }) => x >= lowest) ?? delivery[delivery.length - 1]
+  if (start) {
+    found.delivery = {
+      type: 'label',
+      xValue: Math.max(lowest, delivery[0]!.x),
+      yValue: Math.min(start.y, max),
+      content: picture.deliveryLabel,
+      position: { x: 'start', y: 'start' },
+      color: colours.ink,
+      font,
+      padding: { left: 6, top: 6, right: 2, bottom: 2 },
+    }
+  }
+  const labelled = lines.flatMap((line) => {
+    const end = endOf(line.points, max)
+    return end ? [{ line, end }] : []
+  })
+  const toPixel = (y: number) => ((y - min) / (max - min)) * plotHeight
+  const places = spreadApart(
+    labelled.map(({ end }) => toPixel(end.y)),
+    labelGap,
+    plotHeight,
+  )
+  labelled.forEach(({ line, end }, index) => {
+    found[`label${index}`] = {
+      type: 'label',
+      xValue: end.x,
+      yValue: min + (places[index]! / plotHeight) * (max - min),
+      content: line.endWord ? `${line.label}: ${line.endWord}` : line.label,
+      position: { x: line.endWord && end.x < (lowest + highest) / 2 ? 'start' : 'start', y: 'center' },
+      color: line.colour,
+      font,
+      padding: { left: 5, right: 0, top: 0, bottom: 0 },
+    }
+  })
+  lines.forEach(({ operatingPoint, colour }, index) => {
+    if (!operatingPoint) return
+    found[`point${index}`] = {
+      type: 'point',
+      xValue: operatingPoint.x,
+      yValue: operatingPoint.y,
+      radius: 5.5,
+      backgroundColor: colours.ground,
+      borderColor: colour,
+      borderWidth: 2.5,
+    }
+  })
+  return found
+}
+
+export function chartOptions(picture: ChartPicture, colours: TokenColours): ChartOptions<'line'> {
+  const { min, max } = airRange(picture)
+  const ticks = { color: colours.muted, font: { family: colours.font, size: 12 }, includeBounds: false }
+  return {
+    animation: false,
+    responsive: true,
+    maintainAspectRatio: false,
+    parsing: false,
+    normalized: true,
+    events: [],
+    layout: { padding: { right: labelRoom, top: 20 } },
+    scales: {
+      x: {
+        type: 'linear',
+        min: picture.lowest,
+        max: picture.highest,
+        border: { color: colours.line },
+        grid: { display: false },
+        ticks: { ...ticks, maxTicksLimit: 6, maxRotation: 0 },
+      },
+      y: {
+        type: 'linear',
+        min,
+        max,
+        border: { display: false },
+        grid: { color: colours.line, lineWidth: 1 },
+        ticks: { ...ticks, maxTicksLimit: 5 },
+      },
+    },
+    plugins: {
+      annotation: {
+        clip: false,
+        animations: undefined,
+        annotations: annotationsOf(picture, colours, max, min),
+      },
+    },
+  }
+}

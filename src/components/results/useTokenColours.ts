@@ -1,0 +1,25 @@
+import { onBeforeUnmount, onMounted, ref } from 'vue'
+
+const tokens = ['ground', 'ink', 'muted', 'line', 'steel', 'holds', 'barely', 'short'] as const
+export type TokenColours = Record<(typeof tokens)[number], string> & { font: string }
+
+function readTokens(): TokenColours {
+  const style = getComputedStyle(document.documentElement)
+  const read = (name: string) => style.getPropertyValue(`--${name}`).trim()
+  const colours = Object.fromEntries(tokens.map((name) => [name, read(name)]))
+  return { ...colours, font: read('font') } as TokenColours
+}
+
+/** The theme's colours as text, for a canvas, which cannot read them from the style sheet. */
+export function useTokenColours() {
+  const colours = ref(readTokens())
+  const observer = new MutationObserver(() => {
+    colours.value = readTokens()
+  })
+  onMounted(() => {
+    colours.value = readTokens()
+    observer.observe(document.documentElement, { attributes: true, attributeFilter: ['data-theme'] })
+  })
+  onBeforeUnmount(() => observer.disconnect())
+  return colours
+}

@@ -1,0 +1,21 @@
+import { createPinia } from 'pinia'
+import PrimeVue from 'primevue/config'
+import { createApp, createSSRApp } from 'vue'
+import type { RouterHistory } from 'vue-router'
+import App from './App.vue'
+import { createTranslations } from './i18n/index.ts'
+import type { Messages } from './i18n/en/index.ts'
+import { createPages } from './router/index.ts'
+import { usePreferencesStore } from './stores/preferences.ts'
+import { preset } from './theme/preset.ts'
+
+/** The application, for the browser and for the page that is drawn at build. */
+export function createSixteenth(history: RouterHistory, spanish?: Messages) {
+  const app = import.meta.env.SSR ? createSSRApp(App) : createApp(App)
+  const router = createPages(history)
+  app.use(createPinia())
+  app.use(createTranslations(usePreferencesStore().language, spanish))
+  app.use(PrimeVue, { theme: { preset, options: { darkModeSelector: false, cssLayer: false } } })
+  app.use(router)
+  return { app, router }
+}

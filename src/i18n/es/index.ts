@@ -1,0 +1,7 @@
+import type { Messages } from '../en/index.ts'
+import { common } from './common.ts'
+import { fields } from './fields.ts'
+import { results } from './results.ts'
+import { pages } from './pages.ts'
+
+export const es: Messages = { ...common, fields, results, pages }
