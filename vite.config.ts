@@ -1,7 +1,9 @@
 import { readdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { brotliCompressSync, constants, gzipSync } from 'node:zlib'
+import { pathToFileURL } from 'node:url'
 import vue from '@vitejs/plugin-vue'
+import { build } from 'vite'
 import type { Plugin } from 'vite'
 import { defineConfig } from 'vitest/config'
 
@@ -36,9 +38,53 @@ function precompress(): Plugin {
   }
 }
 
+/** What of Inter the verdict is drawn in. */
+const heroFonts = /inter-latin-(400|800)-normal-[^/]*\.woff2$/
+
+/** The page a visitor finds is drawn into index.html, so that its verdict stands before any script has run. */
+function prerender(): Plugin {
+  const outDir = join(import.meta.dirname, 'node_modules/.sixteenth/prerender')
+  async function draw(): Promise<string> {
+    await build({
+      configFile: false,
+      root: import.meta.dirname,
+      plugins: [vue()],
+      publicDir: false,
+      logLevel: 'warn',
+      build: { ssr: 'src/prerender.ts', outDir, emptyOutDir: true, copyPublicDir: false },
+    })
+    const { href } = pathToFileURL(join(outDir, 'prerender.js'))
+    const drawn = (await import(`${href}?${Date.now()}`)) as { prerender: () => Promise<string> }
+    return drawn.prerender()
+  }
+  return {
+    name: 'prerender',
+    apply: 'build',
+    transformIndexHtml: {
+      order: 'post',
+      async handler(page, { bundle = {} }) {
+        const fonts = Object.keys(bundle).filter((name) => heroFonts.test(name))
+        return {
+          html: page.replace('<!--app-->', await draw()),
+          tags: fonts.map((name) => ({
+            tag: 'link',
+            attrs: { rel: 'preload', href: `/${name}`, as: 'font', type: 'font/woff2', crossorigin: '' },
+            injectTo: 'head' as const,
+          })),
+        }
+      },
+    },
+  }
+}
+
 export default defineConfig({
-  plugins: [vue(), precompress()],
+  plugins: [vue(), prerender(), precompress()],
   publicDir: 'src/public',
+  define: {
+    __VUE_I18N_LEGACY_API__: false,
+    __VUE_I18N_FULL_INSTALL__: false,
+    __INTLIFY_PROD_DEVTOOLS__: false,
+  },
   server: { port: 5173, strictPort: true, proxy: { '/api': `http://127.0.0.1:${process.env.PORT ?? 3000}` } },
   build: {
     outDir: 'dist',

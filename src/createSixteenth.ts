@@ -1,6 +1,6 @@
 import { createPinia } from 'pinia'
 import PrimeVue from 'primevue/config'
-import { createApp, createSSRApp } from 'vue'
+import { createApp } from 'vue'
 import type { RouterHistory } from 'vue-router'
 import App from './App.vue'
 import { createTranslations } from './i18n/index.ts'
@@ -11,7 +11,7 @@ import { preset } from './theme/preset.ts'
 
 /** The application, for the browser and for the page that is drawn at build. */
 export function createSixteenth(history: RouterHistory, spanish?: Messages) {
-  const app = import.meta.env.SSR ? createSSRApp(App) : createApp(App)
+  const app = createApp(App)
   const router = createPages(history)
   app.use(createPinia())
   app.use(createTranslations(usePreferencesStore().language, spanish))

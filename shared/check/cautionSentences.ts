@@ -26,15 +26,15 @@ export const cautionSentences: Record<Language, Record<CautionCode, string>> = {
   },
   es: {
     'engine-short':
-      'A esta altitud al motor le falta cerca de {size} % de la potencia que pide el trabajo: pida una máquina con turbo o la clase siguiente.',
+      'A esta altitud al motor le falta cerca de {size} % de la potencia que pide el trabajo: pida una máquina con turbo o el tamaño siguiente.',
     'barometer-against-altitude':
-      'El barómetro se aparta {size} % de lo que corresponde a esta altitud. Debe ser la lectura del lugar, no la del parte del tiempo, que va reducida al nivel del mar.',
+      'El barómetro se aparta {size} % de lo que toca a esta altitud. Tiene que ser la lectura en la obra, no la del parte del tiempo, que viene llevada al nivel del mar.',
     'air-only-reading-low':
       'Con el abrasivo cerrado la misma boquilla gasta cerca de {size} % más aire y el manómetro marca de menos. Lea el manómetro de aguja mientras chorrea.',
     'target-above-set-pressure':
-      'La presión pedida solo se alcanza por encima de la de ajuste, con la máquina ya cerrada {size} %: queda poco detrás.',
+      'A la presión pedida solo se llega pasando la de ajuste, con la máquina ya cerrada {size} %: detrás queda muy poco aire.',
     'low-compressor-pressure':
-      'El compresor trabaja {size} % por debajo de unos 4 bar (58 psi): ahí uno de tornillo arrastra aceite y pueden actuar sus protecciones.',
+      'El compresor trabaja {size} % por debajo de unos 4 bar (58 psi): ahí uno de tornillo arrastra aceite y pueden saltar sus protecciones.',
     'hose-under-twice-bore':
       'La última manguera no llega al doble del paso de la boquilla: el manómetro se aparta hasta {size} % de lo que ve la boquilla. Ponga un latiguillo más ancho.',
     'hose-under-three-times-bore':
@@ -42,7 +42,7 @@ export const cautionSentences: Record<Language, Record<CautionCode, string>> = {
     'humid-bare-compressor':
       'Con aire caliente y húmedo, un compresor sin posenfriador lleva el agua hasta la boquilla: la presión real es cerca de {size} % mayor y el abrasivo puede apelmazarse.',
     'nozzle-below-critical':
-      'La boquilla trabaja {size} % por debajo de la presión a la que su garganta se vuelve sónica: un venturi pasa ahí más aire del calculado.',
+      'La boquilla trabaja {size} % por debajo de la presión con la que el aire llega a la velocidad del sonido: ahí una venturi deja pasar más aire del que se calcula.',
   },
 }
 

@@ -1,14 +1,18 @@
 import { ABRASIVES } from '../catalogue/media.ts'
 import { BIT_SETS } from '../catalogue/drillBits.ts'
-import { maxCurvePoints, maxOutlets } from '../contracts/limits.ts'
+import { maxCurvePoints, maxDraws, maxOutlets } from '../contracts/limits.ts'
 import { createCheckForm, createOutlet } from './checkForm.ts'
 import type { CheckForm, CurvePointForm, OutletForm } from './checkForm.ts'
 
 /** The first mark of an address that holds a check; a later shape of the form takes the next number. */
 const version = '1'
-const longestFragment = 12_000
-const longestText = 40
+/** more than every field of every nozzle filled to the brim */
+const longestFragment = 40_000
+/** what a field lets a person type, too long for a quantity or not */
+const longestText = 60
 const mostPieces = 20
+/** with the tools beside them no more than a check takes */
+const mostHoods = maxDraws - 1
 
 type Json = null | boolean | number | string | Json[] | { [key: string]: Json }
 
@@ -34,17 +38,21 @@ const lists: Record<string, { create: () => OutletForm | CurvePointForm; least: 
   curve: { create: emptyPoint, least: 0, most: maxCurvePoints },
 }
 
+function newEntry(key: string): Json {
+  return (lists[key]?.create() ?? null) as unknown as Json
+}
+
 /** Only what differs from the form a visitor finds, so that a usual link stays short. */
-function difference(value: Json, from: Json): Json | undefined {
+function difference(value: Json, from: Json, key = ''): Json | undefined {
   if (Array.isArray(value)) {
-    const same = Array.isArray(from) && JSON.stringify(from) === JSON.stringify(value)
-    return same ? undefined : value
+    if (JSON.stringify(from) === JSON.stringify(value)) return undefined
+    return value.map((entry) => difference(entry, newEntry(key)) ?? {})
   }
   if (value !== null && typeof value === 'object') {
     const base = from as { [key: string]: Json }
     const changed: { [key: string]: Json } = {}
     for (const [key, part] of Object.entries(value)) {
-      const piece = difference(part, base[key] ?? null)
+      const piece = difference(part, base[key] ?? null, key)
       if (piece !== undefined) changed[key] = piece
     }
     return Object.keys(changed).length === 0 ? undefined : changed
@@ -61,8 +69,8 @@ function overlay(shape: Json, said: Json, key: string): Json {
     return said
   }
   if (typeof shape === 'number') {
-    if (typeof said !== 'number' || !Number.isInteger(said) || said < 0 || said > mostPieces)
-      throw new Error(key)
+    const most = key === 'count' ? mostHoods : mostPieces
+    if (typeof said !== 'number' || !Number.isInteger(said) || said < 0 || said > most) throw new Error(key)
     return said
   }
   if (typeof shape === 'boolean') {
@@ -73,7 +81,7 @@ function overlay(shape: Json, said: Json, key: string): Json {
     const list = lists[key]
     if (!list || !Array.isArray(said) || said.length < list.least || said.length > list.most)
       throw new Error(key)
-    return said.map((entry) => overlay(list.create() as unknown as Json, entry, key))
+    return said.map((entry) => overlay(newEntry(key), entry, key))
   }
   if (shape === null || said === null || typeof said !== 'object' || Array.isArray(said)) throw new Error(key)
   const result = { ...shape }

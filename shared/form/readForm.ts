@@ -19,6 +19,7 @@ export type FieldProblem =
       ok: false
       problem: 'unload-too-near-set' | 'bore-now-under-new' | 'curve-not-rising' | 'curve-air-rising'
     }
+  | { ok: false; problem: 'loss-too-large' }
   | { ok: false; problem: 'drop-too-large'; detail: { largestKpa: number } }
 
 export interface ReadCheck {
@@ -42,7 +43,7 @@ export const fieldKinds = {
   curvePressure: ['pressure', checkLimits.curvePressureKpa],
   hoseBore: ['diameter', checkLimits.insideDiameterMm],
   hoseLength: ['length', checkLimits.lengthM],
-  drop: ['pressure', { min: 0, max: 3500 }],
+  drop: ['pressure', { min: 0.1, max: 3500 }],
   dropFlow: ['volumeFlow', checkLimits.freeAirM3Min],
   roughness: ['diameter', checkLimits.roughnessMm],
   lossK: ['number', checkLimits.lossK],
@@ -107,6 +108,8 @@ interface LineConditions {
   inletKpaGauge: number
   ambientKpa: number
   temperatureK: number
+  /** what a free m³ of the site is, dry and as warm as the line */
+  volumeRatio: number
 }
 
 function readHose(
@@ -119,7 +122,6 @@ function readHose(
 ): CheckElement[] {
   if (!hose.isUsed) return []
   const insideDiameterMm = reader.require(`${path}.bore`, 'hoseBore', hose.bore)
-  const lengthM = reader.require(`${path}.length`, 'hoseLength', hose.length)
   const dropKpa = reader.optional(`${path}.measuredDrop`, 'drop', hose.measuredDrop)
   const freeAirM3Min = reader.optional(`${path}.measuredFlow`, 'dropFlow', hose.measuredFlow)
   const roughnessMm = reader.optional(`${path}.roughness`, 'roughness', hose.roughness) ?? HOSE_ROUGHNESS_MM
@@ -127,14 +129,24 @@ function readHose(
     reader.fail(`${path}.measuredFlow`, { ok: false, problem: 'empty' })
   }
   if (dropKpa !== undefined && freeAirM3Min !== undefined) {
-    const measured = lossKFromMeasured({ dropKpa, freeAirM3Min, insideDiameterMm, ...conditions })
-    if (measured.ok)
-      return [{ name, insideDiameterMm, lossK: Math.min(measured.lossK, checkLimits.lossK.max) }]
-    if (measured.problem === 'drop-too-large') {
+    const { inletKpaGauge, ambientKpa, temperatureK, volumeRatio } = conditions
+    const measured = lossKFromMeasured({
+      dropKpa,
+      freeAirM3Min: freeAirM3Min * volumeRatio,
+      insideDiameterMm,
+      inletKpaGauge,
+      ambientKpa,
+      temperatureK,
+    })
+    if (measured.ok) {
+      if (measured.lossK <= checkLimits.lossK.max) return [{ name, insideDiameterMm, lossK: measured.lossK }]
+      reader.fail(`${path}.measuredDrop`, { ok: false, problem: 'loss-too-large' })
+    } else if (measured.problem === 'drop-too-large') {
       const detail = { largestKpa: measured.largestDropKpa }
       reader.fail(`${path}.measuredDrop`, { ok: false, problem: 'drop-too-large', detail })
     }
   }
+  const lengthM = reader.require(`${path}.length`, 'hoseLength', hose.length)
   const element = hoseElement({ insideDiameterMm, lengthM, couplings: hose.couplings })
   return [{ name, ...element, roughnessMm, ...(mediaFactor === 1 ? {} : { mediaFactor }) }]
 }
@@ -148,7 +160,8 @@ function readOutlet(
   const outlet = form.outlets[index]!
   const path = `outlets.${index}`
   const ending = form.outlets.length > 1 ? `-${index + 1}` : ''
-  const mediaFactor = form.pot.isUsed ? MEDIA_FACTOR_AFTER_POT : 1
+  const carriesMedia = form.pot.isUsed && outlet.loading !== 'clean'
+  const mediaFactor = carriesMedia ? MEDIA_FACTOR_AFTER_POT : 1
   const hasOwnPot = form.pot.isUsed && !(form.pot.isShared && form.outlets.length > 1)
   const line: CheckElement[] = [
     ...(hasOwnPot ? [readPot(reader, form, `pot${ending}`)] : []),
@@ -238,11 +251,17 @@ export function readForm(form: CheckForm, otherUnit?: OtherUnit): ReadCheck {
   const airTemperatureC = reader.require('site.airTemperature', 'airTemperature', form.site.airTemperature)
   const relativeHumidityPct = reader.optional('site.humidity', 'humidity', form.site.humidity)
   const compressor = readCompressor(reader, form)
-  const ambient = resolveAmbient({ altitudeM, airTemperatureK: airTemperatureC + 273.15 })
+  const { pressurePa, temperatureK, vapourPressurePa } = resolveAmbient({
+    altitudeM,
+    airTemperatureK: airTemperatureC + 273.15,
+    relativeHumidity: (relativeHumidityPct ?? 0) / 100,
+  })
+  const lineTemperatureK = temperatureK + (compressor.lineTemperatureRiseK ?? 0)
   const conditions: LineConditions = {
     inletKpaGauge: compressor.setPressureKpa,
-    ambientKpa: ambient.pressurePa / 1000,
-    temperatureK: ambient.temperatureK + (compressor.lineTemperatureRiseK ?? 0),
+    ambientKpa: pressurePa / 1000,
+    temperatureK: lineTemperatureK,
+    volumeRatio: ((1 - vapourPressurePa / pressurePa) * lineTemperatureK) / temperatureK,
   }
   const airLine = readHose(reader, 'airLine', 'air-line', form.airLine, 1, conditions)
   if (form.pot.isUsed && form.pot.isShared && form.outlets.length > 1)

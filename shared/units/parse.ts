@@ -165,6 +165,11 @@ function textIn(value: number, unit: Unit): string {
   return unit.symbol === '' ? String(value) : `${value} ${unit.symbol}`
 }
 
+/** Out of the range, but by so little that it may well be what was meant: `6,000 m` where 5,000 is the most. */
+function isNear(value: number, range: QuantityRange | undefined): boolean {
+  return range !== undefined && value > range.max && value <= 3 * range.max
+}
+
 /** One reading is the answer; of several, the one that is inside the range, or else the person is asked. */
 function settle(
   readings: readonly QuantityReading[],
@@ -184,6 +189,8 @@ function settle(
   }
   const answer: ParsedQuantity = { ok: true, value: chosen.value, unit: chosen.unit }
   if (readings.length === 1) return answer
+  const isNearMiss = readings.some((reading) => !possible.includes(reading) && isNear(reading.value, range))
+  if (isNearMiss && !isUsualGrouping) return { ok: false, problem: question, detail: { readings } }
   if (others.length === 0) return { ...answer, note: 'ambiguous-settled-by-range' }
   // with feet, psi, cfm the trade writes 5,250 for five thousand and some
   if (isUsualGrouping) return { ...answer, note: 'ambiguous-settled-by-unit' }

@@ -2,6 +2,13 @@ import { computed } from 'vue'
 import { useWords } from './useWords.ts'
 import type { AnsweredCheck } from './usePressureCheck.ts'
 
+/** Whole percents, tenths below 10; never minus zero. */
+function formatPercent(percent: number): string {
+  const digits = Math.abs(percent) < 9.95 ? 1 : 0
+  const text = Math.abs(percent).toFixed(digits)
+  return `${percent < 0 && Number(text) !== 0 ? '−' : ''}${text}\u00a0%`
+}
+
 /** The hero's number and the sentence of the air margin. */
 export function useVerdictWords(check: () => AnsweredCheck) {
   const { t, quantity, parts, system } = useWords()
@@ -11,20 +18,23 @@ export function useVerdictWords(check: () => AnsweredCheck) {
     return outlets ? Math.min(...outlets.map((outlet) => outlet.nozzlePressureKpa)) : null
   })
 
-  /** Rounded as gauges are read; one digit more where rounding would hide which side of the target it is on. */
+  /** Rounded as gauges are read; more digits where rounding would hide that it is under the target. */
   const headline = computed(() => {
-    if (lowestKpa.value === null) return null
-    const target = parts('pressure', check().request.targetNozzlePressureKpa).number
-    const usual = parts('pressure', lowestKpa.value)
-    const hidesSide = usual.number === target && check().answer.verdict === 'falls-short'
-    return hidesSide ? parts('pressure', lowestKpa.value, system.value === 'us' ? 1 : 2) : usual
+    const pressureKpa = lowestKpa.value
+    if (pressureKpa === null) return null
+    const { answer, request } = check()
+    let digits = system.value === 'us' ? 0 : 1
+    const shown = (kpa: number) => parts('pressure', kpa, digits)
+    const hidesSide = () => shown(pressureKpa).number === shown(request.targetNozzlePressureKpa).number
+    if (answer.verdict === 'falls-short') for (; digits < 4 && hidesSide(); digits++);
+    return shown(pressureKpa)
   })
 
   const margin = computed(() => {
     const { answer, request } = check()
     if (!answer.atTarget) return null
     const { airMarginPct, requiredFreeAirM3Min, deliveredFreeAirM3Min } = answer.atTarget
-    const share = `${airMarginPct.toFixed(Math.abs(airMarginPct) < 10 ? 1 : 0).replace(/^-(0(\.0)?)$/, '$1')}\u00a0%`
+    const share = formatPercent(airMarginPct)
     const key = request.airTakenFirst.length > 0 ? 'check.needsFirst' : 'check.needs'
     return {
       share: t('check.margin', { margin: share }),

@@ -2,21 +2,50 @@ import { defineStore } from 'pinia'
 import { ref } from 'vue'
 import { createCheckForm } from '#shared/form/checkForm.ts'
 import { readFragment, writeFragment } from '#shared/form/fragment.ts'
+import { toTypedText } from '#shared/units/format.ts'
+import { sixtyFourthsOf, snapBoreMm } from '#shared/units/quantities.ts'
+import type { UnitSystem } from '#shared/units/quantities.ts'
+
+/** A dragged bore is a 64th or a tenth of a millimetre; sums of steps carry crumbs that nobody would type. */
+function roundBore(boreMm: number): number {
+  return sixtyFourthsOf(boreMm) === null ? Number(boreMm.toFixed(4)) : snapBoreMm(boreMm)
+}
 
 /** The check on the screen, as typed; it lives in the address's fragment. */
 export const usePressureCheckStore = defineStore('pressureCheck', () => {
   const form = ref(createCheckForm())
   const isLinkBroken = ref(false)
+  let isOpen = false
 
   function open(fragment: string) {
     const read = readFragment(fragment)
     form.value = read.form
     isLinkBroken.value = read.isBroken
+    isOpen = true
+  }
+
+  /** Who comes back from another page brings no fragment: the check is as it was left. */
+  function resume(fragment: string) {
+    if (fragment !== '' || !isOpen) open(fragment)
+  }
+
+  /** The bore now as if it had been typed. */
+  function typeBoreNow(outletIndex: number, boreMm: number, system: UnitSystem) {
+    const outlet = form.value.outlets[outletIndex]
+    if (outlet) outlet.boreNow = { text: toTypedText('bore', roundBore(boreMm), system), system }
   }
 
   function startOver() {
     open('')
   }
 
-  return { form, isLinkBroken, open, startOver, fragment: () => writeFragment(form.value) }
+  return {
+    form,
+    isLinkBroken,
+    open,
+    resume,
+    startOver,
+    typeBoreNow,
+    fragment: () => writeFragment(form.value),
+  }
 })

@@ -32,7 +32,7 @@ export const preset = definePreset(
         },
       },
       button: {
-        root: { borderRadius: 'var(--radius-small)', paddingX: '14px', paddingY: '11px' },
+        root: { borderRadius: 'var(--radius-small)', paddingX: '14px', paddingY: '12px' },
         colorScheme: {
           light: {
             root: {

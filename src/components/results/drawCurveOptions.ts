@@ -40,7 +40,7 @@ function airRange({ delivery, lines, lowest, highest }: ChartPicture) {
   const inRange = delivery.filter(({ x }) => x >= lowest && x <= highest)
   const delivered = Math.max(0, ...inRange.map(({ y }) => y))
   const drawn = lines.flatMap(({ points }) => points.map(({ y }) => y))
-  const most = Math.max(delivered, Math.min(Math.max(0, ...drawn), 2 * (delivered || Infinity)))
+  const most = Math.max(delivered, Math.min(Math.max(0, ...drawn), 3.2 * (delivered || Infinity)))
   const least = Math.min(most, ...drawn)
   return { min: 0.8 * least, max: 1.08 * most || 1 }
 }
@@ -95,17 +95,20 @@ function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number
       padding: { left: 2, right: 2, top: 0, bottom: 3 },
     },
   }
-  const start = delivery.find(({ x }) => x >= lowest) ?? delivery[delivery.length - 1]
-  if (start) {
+  // At its right end where the delivery is still flat there, else where it begins.
+  const inRange = delivery.filter(({ x, y }) => x >= lowest && x <= highest && y >= min)
+  const [start, end] = [inRange[0], inRange[inRange.length - 1]]
+  if (start && end) {
+    const runsThrough = end.y > 0.95 * start.y && delivery.some(({ x }) => x >= highest)
     found.delivery = {
       type: 'label',
-      xValue: Math.max(lowest, delivery[0]!.x),
-      yValue: Math.min(start.y, max),
+      xValue: runsThrough ? highest : Math.max(lowest, delivery[0]!.x),
+      yValue: Math.min(runsThrough ? end.y : start.y, max),
       content: picture.deliveryLabel,
-      position: { x: 'start', y: 'start' },
+      position: { x: runsThrough ? 'end' : 'start', y: 'end' },
       color: colours.ink,
       font,
-      padding: { left: 6, top: 6, right: 2, bottom: 2 },
+      padding: { left: 2, top: 0, right: 2, bottom: 5 },
     }
   }
   const labelled = lines.flatMap((line) => {
@@ -124,9 +127,10 @@ function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number
       xValue: end.x,
       yValue: min + (places[index]! / plotHeight) * (max - min),
       content: line.endWord ? `${line.label}: ${line.endWord}` : line.label,
-      position: { x: line.endWord && end.x < (lowest + highest) / 2 ? 'start' : 'start', y: 'center' },
+      position: { x: 'start', y: 'center' },
       color: line.colour,
       font,
+      xAdjust: line.operatingPoint && line.operatingPoint.x >= end.x - 0.02 * (highest - lowest) ? 8 : 0,
       padding: { left: 5, right: 0, top: 0, bottom: 0 },
     }
   })
@@ -171,7 +175,7 @@ export function chartOptions(picture: ChartPicture, colours: TokenColours): Char
         max,
         border: { display: false },
         grid: { color: colours.line, lineWidth: 1 },
-        ticks: { ...ticks, maxTicksLimit: 5 },
+        ticks: { ...ticks, maxTicksLimit: 7 },
       },
     },
     plugins: {

@@ -17,7 +17,7 @@ export function useBoreNames() {
     const size = HOSE_SIZES.find((usual) => Math.abs(usual.insideDiameterMm - insideDiameterMm) < 0.0005)
     return size && system.value === 'metric'
       ? `${size.metricName}\u00a0mm`
-      : quantity('diameter', insideDiameterMm)
+      : quantity('diameter', insideDiameterMm).replaceAll(' ', '\u00a0')
   }
 
   return { nozzleName, hoseName }

@@ -21,7 +21,7 @@ const perMinute = 60
 
 /** The curves of a check in the person's units, for a chart and for its table. */
 export function useDrawCurves(check: () => AnsweredCheck) {
-  const { t, quantity, system, elementName } = useWords()
+  const { t, quantity, system, elementName, reasonSentence } = useWords()
   const { nozzleName } = useBoreNames()
 
   const curves = computed(() => {
@@ -87,7 +87,7 @@ export function useDrawCurves(check: () => AnsweredCheck) {
       const [code, element = ''] = end.split(':')
       if (code === 'choked')
         return [t('results.curve.endsChoked', { line: label, element: elementName(element) })]
-      return [t('results.curve.endsHeld', { line: label })]
+      return [t('results.curve.endsHeld')]
     })
     const first = delivery.points[0]
     const isCutLow = delivery.end && first && first.nozzleGaugePa > lowestGaugePa
@@ -95,7 +95,8 @@ export function useDrawCurves(check: () => AnsweredCheck) {
       const element = elementName(delivery.end?.split(':')[1] ?? '')
       ends.push(t('results.curve.startsChoked', { element }))
     }
-    return ends
+    if (!first) ends.push(reasonSentence('air-taken-first'))
+    return [...new Set(ends)]
   })
 
   const balances = computed(() =>
@@ -121,6 +122,5 @@ export function useDrawCurves(check: () => AnsweredCheck) {
     pressureOf,
     airOf,
     toDisplay,
-    pressureText,
   }
 }

@@ -13,13 +13,21 @@ function readTokens(): TokenColours {
 /** The theme's colours as text, for a canvas, which cannot read them from the style sheet. */
 export function useTokenColours() {
   const colours = ref(readTokens())
+  let isShown = true
   const observer = new MutationObserver(() => {
     colours.value = readTokens()
   })
   onMounted(() => {
     colours.value = readTokens()
+    // A canvas drawn before Inter has arrived keeps the fallback until it is drawn again.
+    void document.fonts?.ready.then(() => {
+      if (isShown) colours.value = readTokens()
+    })
     observer.observe(document.documentElement, { attributes: true, attributeFilter: ['data-theme'] })
   })
-  onBeforeUnmount(() => observer.disconnect())
+  onBeforeUnmount(() => {
+    isShown = false
+    observer.disconnect()
+  })
   return colours
 }

@@ -1,5 +1,5 @@
 export const common = {
-  app: { name: 'Sixteenth', tagline: 'air and nozzles for blasters' },
+  app: { name: 'Sixteenth' },
   nav: {
     label: 'Main',
     check: 'Check',
@@ -31,18 +31,16 @@ export const common = {
   check: {
     title: 'Pressure check',
     atNozzle: 'at the nozzle',
+    atLowestNozzle: 'at the lowest nozzle',
     outlet: 'Nozzle {number}',
     target: 'Target {target}.',
     gauge: 'You should see about {pressure} on the needle gauge.',
     margin: '{margin} air margin',
     needs: 'needs {needed} of the {delivered} it delivers at {pressure}',
     needsFirst: 'needs {needed} of the {delivered} it delivers at {pressure}, breathing air and tools first',
-    lowestAtTarget: 'The lowest nozzle stays {gap} under the target.',
     noPressure: 'no steady pressure',
-    noPressureSentence: 'No balance is to be had with this rig as it stands.',
     stale: 'The last whole answer; a field is not finished.',
     brokenLink: 'That link held no check that can be read, so this is a clean one.',
-    stickyLabel: 'Verdict',
     share: 'Copy link',
     shared: 'Link copied',
     shareFailed: 'Copy the address from the bar above',
@@ -54,6 +52,7 @@ export const common = {
     label:
       'Bore ruler: new {newBore}, now {nowBore}, limit {limit}. At the limit bore this rig just reaches the target.',
     labelNoLimit: 'Bore ruler: new {newBore}, now {nowBore}. No bore reaches the target.',
+    handle: 'Bore now: drag it, or step it with the arrow keys',
     new: 'new',
     now: 'now',
     limit: 'limit',
@@ -87,10 +86,10 @@ export const common = {
     safety:
       'Compressor off, hose bled, deadman locked, nozzle off the hose. Turn a twist bit by hand from the threaded end and never force it; it is through when it passes the narrow part. Rinse and look through first: a crack retires the nozzle whatever the bit says.',
   },
-  cautions: { title: 'Cautions', more: 'And {count} more', size: '{size} %' },
+  cautions: { title: 'Cautions', more: 'And {count} more' },
   safety: {
     title: 'Before you blast',
-    air: 'Breathing air is Grade D and its flow comes before the nozzle’s: 6 to 15 cfm (170 to 425 L/min) to a loose-fitting hood (42 CFR 84 Subpart J, Table 8).',
+    air: 'Breathing air is Grade D and its flow comes before the nozzle’s: {least} to {most} to a loose-fitting hood (42 CFR 84 Subpart J, Table 8).',
     hose: 'Deadman working, whip checks and coupling pins on every joint, no kinks.',
     sand: 'No sand with free silica. Hearing protection: a blast nozzle runs upward of 115 dBA.',
     liner: 'A brittle liner does not survive a fall: do not drop it, do not tap it clear.',

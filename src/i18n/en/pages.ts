@@ -12,6 +12,178 @@ export const pages = {
   },
   sources: {
     title: 'Where the figures come from',
+    lead: 'Every figure is computed on this device from what stands in the fields. This page says how, from which sources, and how far to trust it.',
+    model: {
+      title: 'What is computed',
+      steps: {
+        site: 'Air at the site',
+        nozzle: 'Nozzle',
+        line: 'Hoses, couplings and pot',
+        compressor: 'Compressor',
+        point: 'Where they meet',
+        limit: 'Limit bore',
+      },
+      texts: {
+        site: 'Its pressure follows from the altitude by the standard atmosphere. Free air is a volume at the site’s own pressure, heat and humidity, not at “standard” conditions.',
+        nozzle:
+          'From about {critical} up, at sea level, air reaches the speed of sound in the throat. Then the flow goes with the area of the bore and the absolute pressure before it, times a discharge coefficient: 0.97 for air alone, less the more media loads the throat.',
+        line: 'Each takes its share of pressure by friction along its length and by its own losses, in air that expands as it goes. A hose that cannot pass the air is said to choke, and no number is made up for it.',
+        compressor:
+          'It delivers its free air, as mass at this site, up to the set pressure; from there a straight line falls to nothing at unload. Hoods and tools take theirs first.',
+        point:
+          'The pressure at the nozzle is the one at which the nozzles draw just what is delivered. The air margin is what would be left at the target, as a share of what the compressor delivers at full load.',
+        limit: 'The largest bore at which the rig still reaches its target, everything else as it is.',
+      },
+    },
+    checked: {
+      title: 'Checked against',
+      columns: { what: 'What', source: 'Published in', residual: 'How near' },
+      rows: {
+        atmosphere: {
+          what: 'Air pressure by altitude',
+          source: 'ISO 2533, standard atmosphere',
+          residual: 'the standard’s own formula',
+        },
+        orifice: {
+          what: 'Choked flow of a perfect gas',
+          source:
+            'orifice table of the classic compressed-air handbook, after S. A. Moss, American Machinist, 1906',
+          residual: 'within 0.4 % and the rounding of the print',
+        },
+        serviceNozzle: {
+          what: 'Blast nozzle in service: {bore} at {pressure}, {air}',
+          more: 'about 4 % more than published',
+          less: 'about 4 % less than published',
+        },
+        cleanAir: {
+          what: 'Coefficient of clean air, 0.97',
+          source: 'ISO 9300, critical-flow venturi nozzles',
+          residual: 'about 2 % below that of a precise nozzle',
+        },
+        friction: {
+          what: 'Friction in a hose',
+          residual: 'the equation itself; a straight line where flow is neither smooth nor turbulent',
+        },
+        viscosity: {
+          what: 'Viscosity of air',
+          source: 'Sutherland’s law',
+          residual: 'within 2 %',
+        },
+        vapour: {
+          what: 'Water vapour in the air',
+          source: 'O. A. Alduchov and R. E. Eskridge, 1996, Magnus form',
+          residual: 'within 0.4 % from {low} to {high}',
+        },
+      },
+    },
+    uncertainty: {
+      title: 'How far to trust it',
+      limit:
+        'Limit bore: ±4 % in 19 cases of 20, from a coefficient known to 3 % and free air known to 2.5 % (one standard deviation each). At a No. 6 that is {size} either way.',
+      margin:
+        'An air margin from 0 to 5 % is called Barely holds: gauges and nameplates are not good for more.',
+      weather: 'Weather moves the air pressure at a site by about 2 % either way.',
+      coefficient:
+        'The coefficient in service was set midway between the two government points, 0.780 and 0.844. The lean and heavy ones are fitted, not measured.',
+    },
+    defaults: {
+      title: 'What is filled in for you',
+      note: 'Each can be typed over. What is from memory or common practice is no published figure: measure it where it matters.',
+      columns: { what: 'What', value: 'Taken as', status: 'Where from' },
+      rows: {
+        nozzleNumber: 'A nozzle number is the bore in sixteenths of an inch',
+        classes: 'Compressor size classes',
+        unload: 'Unload over set pressure',
+        aftercooled: 'Line air over the site’s air, aftercooled',
+        bare: 'Line air over the site’s air, bare',
+        coefficient: 'Discharge coefficient, {loading}',
+        straight: 'Straight bore, against a venturi',
+        coupling: 'Loss of a coupling',
+        pot: 'Loss of a pot on {bore} piping',
+        mediaFactor: 'Friction of hose that carries media',
+        roughness: 'Roughness of a hose',
+        hood: 'Air for a loose-fitting hood',
+        bits: 'Number and letter bits',
+        fuel: 'Fuel at full load, {air} at {pressure}',
+        idle: 'Fuel at idle, of full load',
+        media: 'Silica sand through a No. 6 at {pressure}, as a base for every media',
+        density: 'Bulk density of an abrasive, such as crushed glass',
+        bag: 'One bag of media',
+        water: 'Water of a wet-blast ring',
+        tank: 'Its tank',
+        engine: 'Power an engine loses with altitude',
+      },
+      values: {
+        classes: '{least} to {most}, at {low}, {middle} or {high}',
+        range: '{least} to {most}',
+        hood: '{least} to {most}; {most} is filled in',
+        engine: '1 % per {step} above {natural} (natural) or {turbo} (turbo)',
+      },
+      basis: {
+        coefficient: 'fitted by the mass of media in the air',
+        normal: 'midway between the two government points',
+        clean: 'compressed-air handbook, well-rounded entry',
+        straight: 'air model',
+        bits: 'sizes as in ASME B94.11M',
+        fuel: '6.4 to 7.8 kW per m³/min; diesel 223 or 248 g/kWh (NR-009d)',
+        media: 'permit handbooks of California air districts',
+        density: 'handbook ranges',
+        engine: 'US MSHA practice, second-hand',
+      },
+    },
+    statuses: {
+      published: 'published',
+      computed: 'computed',
+      memory: 'from memory',
+      practice: 'common practice, no source',
+    },
+    left: {
+      title: 'What is not in it',
+      wear: 'Wear over time and what it costs: to come.',
+      steady: 'Time: every answer is a steady state, not the first seconds after the trigger.',
+      bends: 'Bends, kinks and hose left on the reel.',
+      metering: 'The metering valve: how much media rides in the air is one of four choices.',
+      water: 'Water in the line: all of it is taken to have left before the nozzle.',
+      venturi:
+        'A venturi under about {critical} at the nozzle, at sea level: it passes more air than is computed.',
+      heat: 'Air that cools along the hose: the line has one temperature.',
+    },
+    safety: {
+      title: 'Safety figures and their rules',
+      note: 'The manuals of the machines, local codes and a competent person decide. The rules here are of the United States.',
+      columns: { what: 'What', figure: 'Figure', rule: 'Rule', status: 'Status' },
+      inWords: 'no figure',
+      rules: {
+        'grade-d-oxygen': 'Grade D breathing air: oxygen',
+        'grade-d-oil-mist': 'Grade D: oil mist',
+        'grade-d-carbon-monoxide': 'Grade D: carbon monoxide',
+        'grade-d-carbon-dioxide': 'Grade D: carbon dioxide',
+        'grade-d-odour': 'Grade D: no noticeable odor',
+        'air-quality': 'Air to a supplied-air respirator: Grade D or better',
+        'cylinder-dew-point': 'Cylinder air: dew point',
+        'compressor-dew-point': 'Breathing-air compressor: dew point below the air around',
+        'compressor-intake-and-filters': 'Breathing-air compressor: clean intake, filters, dated tag',
+        'carbon-monoxide-oil-free': 'Oil-free compressor: carbon monoxide',
+        'oil-lubricated-alarm':
+          'Oil-lubricated compressor: high-temperature or carbon monoxide alarm, or both; carbon monoxide',
+        'hood-flow-loose-fitting': 'Air to a loose-fitting hood',
+        'hood-flow-tight-fitting': 'Air to a tight-fitting facepiece',
+        'hood-flow-most': 'Air to a hood, at most',
+        'breathing-hose-length': 'Breathing-air hose, in lengths of 25 ft (7.6 m)',
+        'dead-man-control': 'Deadman: the nozzle blasts only while its valve is held open by hand',
+        'approved-respirator': 'Only approved blasting respirators',
+        'respirator-mandatory':
+          'Blasting respirator required: blast rooms, silica sand in the open, toxic dust over its limit',
+        'silica-limit': 'Respirable crystalline silica, limit',
+        'silica-action-level': 'Respirable crystalline silica, action level',
+        'noise-ear-protection': 'Ear protection',
+        'noise-double-protection': 'Double ear protection',
+        'noise-blast-nozzle': 'Noise of a blast nozzle',
+        'noise-limit': 'Noise, limit',
+        'excess-flow-device':
+          'Hose over this inside diameter: a device at the source that cuts the pressure if the hose fails',
+      },
+    },
   },
   notFound: { title: 'Nothing here', text: 'This page does not exist.', back: 'To the pressure check' },
 }

@@ -198,13 +198,18 @@ describe('what cannot be read', () => {
     const settled = (range: ParseOptions['range']) =>
       parseQuantity('pressure', '1,250', { system: 'us', range })
     expect(settled({ min: 10, max: 3500 })).toMatchObject({ problem: 'out-of-range' })
-    expect(settled({ min: 0, max: 3500 })).toEqual({
+    expect(settled({ min: 0, max: 2000 })).toEqual({
       ok: true,
       value: 1.25 * 6.894757293168361,
       unit: 'psi',
       note: 'ambiguous-settled-by-range',
     })
     expect(settled({ min: 10, max: 9000 })).toMatchObject({ ok: true, unit: 'psi', value: 8618.446616460451 })
+  })
+
+  it('asks rather than take 6,000 m for six metres where 5,000 is the most', () => {
+    const asked = parseQuantity('altitude', '6,000 m', { system: 'metric', range: { min: -430, max: 5000 } })
+    expect(readingsOf(asked)).toEqual(['6000 m', '6 m'])
   })
 
   it('reads a grouped 5,250 ft as five thousand, since feet are written so', () => {
