@@ -1,7 +1,7 @@
 import { massFlowAtGauge } from './nozzle.ts'
 import type { Reason } from './operatingPoint.ts'
 import { requireTarget } from './pressureCheck.ts'
-import type { TargetResult } from './pressureCheck.ts'
+import type { TargetTrial } from './pressureCheck.ts'
 import { prepareRig } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
 import type { Rig, Site } from './rig.ts'
@@ -31,9 +31,9 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
     outlets: rig.outlets.map((other, i) => (i === outletIndex ? { ...outlet, nozzle } : other)),
   }
   const perSquare = outlet.nozzle.conductance / outlet.boreM ** 2
-  const requireAt = (square: number): TargetResult => {
+  const requireAt = (square: number): TargetTrial => {
     nozzle.conductance = perSquare * square
-    return requireTarget(trial, targetGaugePa)
+    return requireTarget(trial, targetGaugePa, false)
   }
   const narrowest = outlet.line.reduce((least, element) => Math.min(least, element.insideDiameterM), Infinity)
   const most = Math.min(largestBoreM, narrowest)
@@ -44,27 +44,38 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
       ? { boreM: most, limitedBy: 'line', reason: null }
       : { boreM: most, limitedBy: null, reason: 'bore-range' }
   }
+  // the air that the other nozzles and the air taken first leave at the target
+  let left = rig.openMassFlow - rig.firstMassFlow
+  rig.outlets.forEach((other, i) => {
+    if (i !== outletIndex) left -= massFlowAtGauge(other.nozzle, targetGaugePa)
+  })
   let earlierSquare = smallestBoreM ** 2
-  let earlierShortage = -least.atTarget!.airMargin
+  let earlierExcess = least.excess
   const root = findRoot({
-    evaluate: (square) => -(requireAt(square).atTarget?.airMargin ?? NaN),
-    propose(square, shortage) {
-      const next = square - (shortage * (square - earlierSquare)) / (shortage - earlierShortage)
+    evaluate: (square) => requireAt(square).excess,
+    propose(square, excess) {
+      const step = square - earlierSquare
+      // past the edge of an obstacle that begins with a jump: from afar halve, from nearby fall back a little
+      if (step > 0 && excess > -earlierExcess) return step > 0.01 * square ? NaN : square - 0.02 * step
+      const next = square - (excess * step) / (excess - earlierExcess)
       earlierSquare = square
-      earlierShortage = shortage
+      earlierExcess = excess
       return next
     },
     low: smallestBoreM ** 2,
     high: most ** 2,
-    guess: (rig.openMassFlow - rig.firstMassFlow) / (massFlowAtGauge(nozzle, targetGaugePa) / most ** 2),
+    guess: (left * most ** 2) / massFlowAtGauge(nozzle, targetGaugePa),
     widthTolerance: 1e-10,
-    residualTolerance: 1e-9,
-    zeroTolerance: 1e-14,
+    // where an obstacle begins the excess may jump, or begin at nothing: the bracket alone tells
+    residualTolerance: Infinity,
+    zeroTolerance: -1,
   })
-  if (root.isMet) {
-    return { boreM: Math.sqrt(root.x), limitedBy: requireAt(root.x).obstacle ?? 'air', reason: null }
+  const square = requireAt(root.high).reason === null ? root.high : root.low
+  return {
+    boreM: Math.sqrt(square),
+    limitedBy: requireAt(square * (1 + 4e-9)).obstacle ?? 'air',
+    reason: null,
   }
-  return { boreM: Math.sqrt(root.low), limitedBy: requireAt(root.high).obstacle, reason: null }
 }
 
 /**

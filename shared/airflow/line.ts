@@ -187,6 +187,19 @@ export interface March {
   /** Pa gauge */
   gaugePa: number
   choked: LineFlow | null
+  /** the greatest √(G² R T0) / p2 on the way: choked from 1 */
+  tightness: number
+}
+
+export function startMarch(gaugePa = 0): March {
+  return { gaugePa, choked: null, tightness: 0 }
+}
+
+/** Begins a march again at a gauge pressure. */
+export function restartMarch(march: March, gaugePa: number): void {
+  march.gaugePa = gaugePa
+  march.choked = null
+  march.tightness = 0
 }
 
 /**
@@ -206,8 +219,10 @@ export function marchBack(
     const element = line[i]!
     const outletPa = ambientPa + march.gaugePa
     const chokePa = massFlow * element.chokePerFlow
-    if (chokePa < outletPa) {
-      march.gaugePa += pressureDrop(element, massFlow, outletPa, (chokePa / outletPa) ** 2)
+    const ratio = chokePa / outletPa
+    if (ratio > march.tightness) march.tightness = ratio
+    if (ratio < 1) {
+      march.gaugePa += pressureDrop(element, massFlow, outletPa, ratio * ratio)
     } else {
       march.choked ??= element
       march.gaugePa = chokePa + pressureDrop(element, massFlow, chokePa, 1) - ambientPa

@@ -2,7 +2,7 @@ import { resolveAmbient } from './ambient.ts'
 import type { Ambient } from './ambient.ts'
 import { airTakenFirstMass, deliveryAt, prepareDelivery } from './compressor.ts'
 import type { Delivery } from './compressor.ts'
-import { findChokedElement, marchBack, prepareElement } from './line.ts'
+import { marchBack, prepareElement, restartMarch, startMarch } from './line.ts'
 import type { LineFlow, March } from './line.ts'
 import { gaugeAtMassFlow, massFlowAtGauge, prepareNozzle } from './nozzle.ts'
 import type { NozzleFlow } from './nozzle.ts'
@@ -54,23 +54,21 @@ export function prepareRig(rig: Rig, site: Site): PreparedRig {
 
 /** The march from an outlet's nozzle, passing this flow, back to the manifold; see marchBack. */
 export function marchOutlet(outlet: PreparedOutlet, massFlow: number, march: March): void {
-  march.gaugePa = gaugeAtMassFlow(outlet.nozzle, massFlow)
-  march.choked = null
+  restartMarch(march, gaugeAtMassFlow(outlet.nozzle, massFlow))
   marchBack(outlet.line, massFlow, outlet.nozzle.ambientPa, march)
 }
 
 /**
- * Flow of one outlet whose line is fed at a gauge pressure (its regulator applied): the march inverted.
+ * Flow of one outlet whose line is fed at a gauge pressure, after its regulator: the march inverted.
  *
- * Result   kg/s; where an element is choked it is what the choke passes, to be looked for with findOutletChoke
+ * Result   kg/s; where an element is choked it is what the choke passes, as a march at it tells
  */
-export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, guess: number): number {
-  const feedGauge = Math.min(manifoldGaugePa, outlet.regulatorGaugePa)
+export function outletMassFlow(outlet: PreparedOutlet, feedGauge: number, guess: number): number {
   if (feedGauge <= 0) return 0
   const most = massFlowAtGauge(outlet.nozzle, feedGauge)
   if (outlet.line.length === 0) return most
   const feedPa = outlet.nozzle.ambientPa + feedGauge
-  const march: March = { gaugePa: 0, choked: null }
+  const march = startMarch()
   let earlierFlow = 0
   let earlierPa = 0
   return findRoot({
@@ -92,10 +90,4 @@ export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, 
     residualTolerance: 1e-11,
     zeroTolerance: 4e-15,
   }).x
-}
-
-/** The choked element nearest the nozzle of an outlet that passes this flow, or null. */
-export function findOutletChoke(outlet: PreparedOutlet, massFlow: number): LineFlow | null {
-  const nozzleGauge = gaugeAtMassFlow(outlet.nozzle, massFlow)
-  return findChokedElement(outlet.line, massFlow, nozzleGauge, outlet.nozzle.ambientPa)
 }

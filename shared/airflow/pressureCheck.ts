@@ -1,12 +1,15 @@
+import { feedOutlets, findBalance, marchOutlets } from './balance.ts'
+import type { OutletFlows } from './balance.ts'
 import { deliveryAt, fullLoadDeliveryAt } from './compressor.ts'
-import { findChokedElement, marchBack } from './line.ts'
-import type { LineFlow, March } from './line.ts'
+import { marchBack, restartMarch, startMarch } from './line.ts'
+import type { LineFlow } from './line.ts'
 import { massFlowAtGauge } from './nozzle.ts'
-import { findOutletsChoke, outletFlows, solvePrepared } from './operatingPoint.ts'
+import { solvePrepared } from './operatingPoint.ts'
 import type { OperatingPoint, Reason } from './operatingPoint.ts'
 import { prepareRig } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
 import type { Rig, Site } from './rig.ts'
+import { findRoot } from './rootFinding.ts'
 
 export type Verdict = 'holds' | 'barely-holds' | 'falls-short' | 'cannot-run'
 
@@ -14,6 +17,8 @@ export type Verdict = 'holds' | 'barely-holds' | 'falls-short' | 'cannot-run'
 export const safeAirMargin = 0.05
 /** of full-load delivery: what the operating point's own tolerance leaves */
 const marginSlack = 1e-9
+/** what rounding makes of a target that is the regulator's own pressure */
+const regulatorSlack = 1e-12
 
 export interface AtTarget {
   /** kg/s, air taken first included */
@@ -42,6 +47,12 @@ export interface PressureCheck extends TargetResult {
   operatingPoint: OperatingPoint | null
 }
 
+/** A target tried, with what a search for its edge needs. */
+export interface TargetTrial extends TargetResult {
+  /** how far past its nearest edge, in that edge's own measure: negative when reached with something left */
+  excess: number
+}
+
 /**
  * What the rig needs for every nozzle to see at least the target.
  *
@@ -52,83 +63,132 @@ export interface PressureCheck extends TargetResult {
  *   air margin = (S − N) / D
  *   N  nozzles + air taken first,  S  delivery at the compressor pressure this needs,  D  full-load delivery there
  *
- * Inputs   rig, prepared · target Pa gauge, positive
+ * Inputs   rig, prepared · target Pa gauge, positive · are the figures of a target reached behind a choke wanted? (a
+ *          search for the edge does without)
  */
-export function requireTarget(rig: PreparedRig, targetGaugePa: number): TargetResult {
+export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigures = true): TargetTrial {
   const ambientPa = rig.ambient.pressurePa
-  const march: March = { gaugePa: 0, choked: null }
-  const flows: number[] = []
+  const march = startMarch()
+  const flows: OutletFlows = { massFlows: [], feedGaugesPa: [] }
   let manifoldGauge = 0
+  let nearest = -Infinity
   for (let i = 0; i < rig.outlets.length; i++) {
     const outlet = rig.outlets[i]!
     const flow = massFlowAtGauge(outlet.nozzle, targetGaugePa)
-    march.gaugePa = targetGaugePa
+    restartMarch(march, targetGaugePa)
     marchBack(outlet.line, flow, ambientPa, march)
-    if (march.choked) return closedAt(march.choked, 'line')
-    if (march.gaugePa > outlet.regulatorGaugePa * (1 + 1e-12)) {
-      return { atTarget: null, reason: `regulator:${i + 1}`, obstacle: 'regulator' }
-    }
-    flows.push(flow)
+    if (march.choked) return choked(march.choked, 'line', march.tightness)
+    const excess = march.gaugePa / (outlet.regulatorGaugePa * (1 + regulatorSlack)) - 1
+    nearest = Math.max(nearest, excess, march.tightness - 1)
+    if (excess > 0) return { atTarget: null, reason: `regulator:${i + 1}`, obstacle: 'regulator', excess }
+    flows.massFlows.push(flow)
+    flows.feedGaugesPa.push(march.gaugePa)
     manifoldGauge = Math.max(manifoldGauge, march.gaugePa)
   }
-  let total = flows[0]!
+  let total = flows.massFlows[0]!
   if (rig.outlets.length > 1) {
-    total = outletFlows(rig, manifoldGauge, flows)
-    const choked = findOutletsChoke(rig, flows)
-    if (choked) return closedAt(choked, 'line')
+    total = feedOutlets(rig, manifoldGauge, flows)
+    marchOutlets(rig, flows.massFlows, march)
+    if (march.choked) return choked(march.choked, 'line', march.tightness)
+    nearest = Math.max(nearest, march.tightness - 1)
   }
-  march.gaugePa = manifoldGauge
+  restartMarch(march, manifoldGauge)
   marchBack(rig.airLine, total, ambientPa, march)
-  const isOpenedHigher = march.choked !== null
-  if (march.choked) {
-    const opened = openAirLine(rig, manifoldGauge, flows)
-    if (opened === null) return closedAt(march.choked, 'air-line')
-    manifoldGauge = opened
-    total = outletFlows(rig, manifoldGauge, flows)
-    march.gaugePa = manifoldGauge
-    marchBack(rig.airLine, total, ambientPa, march)
+  if (!march.choked) {
+    const weighed = weighAir(rig, total, manifoldGauge, march.gaugePa)
+    return { ...weighed, excess: Math.max(weighed.excess, nearest, march.tightness - 1) }
   }
-  const compressorPa = ambientPa + march.gaugePa
+
+  if (rig.outlets.every((outlet) => outlet.regulatorGaugePa === Infinity)) {
+    return choked(march.choked, 'air-line', march.tightness)
+  }
+  // carried through the choke, the air is short here already: the balance lies below
+  const carried = weighAir(rig, total, manifoldGauge, march.gaugePa)
+  if (carried.excess >= 0)
+    return { ...choked(march.choked, 'air-line', march.tightness), excess: carried.excess }
+  const balance = findBalance(rig)
+  if (balance.manifoldGaugePa <= manifoldGauge) return choked(march.choked, 'air-line', march.tightness)
+  if (balance.choked) return choked(march.choked, 'air-line', balance.tightness)
+  // at the edge the manifold leaves the choke like a root: squared it comes in straight
+  const behindChoke = { reason: null, obstacle: 'air-line', excess: -((1 - balance.tightness) ** 2) } as const
+  if (!wantsFigures) return { atTarget: null, ...behindChoke }
+  const opened = openAirLine(rig, manifoldGauge, balance.manifoldGaugePa, flows)
+  total = feedOutlets(rig, opened, flows)
+  restartMarch(march, opened)
+  marchBack(rig.airLine, total, ambientPa, march)
+  return { ...weighAir(rig, total, opened, march.gaugePa), ...behindChoke }
+}
+
+function choked(element: LineFlow, obstacle: 'line' | 'air-line', tightness: number): TargetTrial {
+  return { atTarget: null, reason: `choked:${element.name}`, obstacle, excess: tightness - 1 }
+}
+
+/** The air at a target whose lines are all open: total flow of the nozzles kg/s, pressures Pa gauge. */
+function weighAir(
+  rig: PreparedRig,
+  total: number,
+  manifoldGaugePa: number,
+  compressorGaugePa: number,
+): TargetTrial {
+  const ambientPa = rig.ambient.pressurePa
+  const compressorPa = ambientPa + compressorGaugePa
   const required = total + rig.firstMassFlow
   const delivered = deliveryAt(rig.delivery, compressorPa)
   const fullLoad = fullLoadDeliveryAt(rig.delivery, compressorPa)
-  const isShort = delivered - required < -marginSlack * fullLoad
+  const airMargin = (delivered - required) / fullLoad
+  const isShort = airMargin < -marginSlack
   const unloadPa = rig.delivery.pressuresPa[rig.delivery.pressuresPa.length - 1]!
   const shortReason = compressorPa >= unloadPa ? 'above-unload' : 'short-of-air'
   return {
     atTarget: {
       requiredMassFlow: required,
       requiredCompressorPressurePa: compressorPa,
-      manifoldPressurePa: ambientPa + manifoldGauge,
+      manifoldPressurePa: ambientPa + manifoldGaugePa,
       deliveredMassFlow: delivered,
       fullLoadMassFlow: fullLoad,
-      airMargin: (delivered - required) / fullLoad,
+      airMargin,
     },
     reason: isShort ? shortReason : null,
-    obstacle: isOpenedHigher ? 'air-line' : isShort ? 'air' : null,
+    obstacle: isShort ? 'air' : null,
+    excess: -airMargin,
   }
-}
-
-function closedAt(element: LineFlow, obstacle: 'line' | 'air-line'): TargetResult {
-  return { atTarget: null, reason: `choked:${element.name}`, obstacle }
 }
 
 /**
- * A manifold pressure over a closed one from which the air line is open, Pa gauge: between the closed one and the
- * operating point, so that the verdict agrees with it; null when the rig does not run above the closed pressure.
+ * A manifold pressure from which the air line is open, between a closed one and the open one of the balance, so that
+ * the verdict agrees with the operating point; all Pa gauge.
  */
-function openAirLine(rig: PreparedRig, closedGaugePa: number, flows: number[]): number | null {
+function openAirLine(
+  rig: PreparedRig,
+  closedGaugePa: number,
+  openGaugePa: number,
+  flows: OutletFlows,
+): number {
   const ambientPa = rig.ambient.pressurePa
-  const { operatingPoint } = solvePrepared(rig)
-  let closed = closedGaugePa
-  let open = operatingPoint ? operatingPoint.manifoldPressurePa - ambientPa : 0
-  if (open <= closed) return null
-  while (open - closed > 1e-10 * (ambientPa + open)) {
-    const middle = (open + closed) / 2
-    if (findChokedElement(rig.airLine, outletFlows(rig, middle, flows), middle, ambientPa)) closed = middle
-    else open = middle
+  const march = startMarch()
+  let earlierGauge = openGaugePa
+  let earlierSlack = NaN
+  const slackAt = (gauge: number) => {
+    restartMarch(march, gauge)
+    marchBack(rig.airLine, feedOutlets(rig, gauge, flows), ambientPa, march)
+    return 1 - march.tightness
   }
-  return open
+  return findRoot({
+    evaluate: slackAt,
+    propose(gauge, slack) {
+      const next = gauge - (slack * (gauge - earlierGauge)) / (slack - earlierSlack)
+      earlierGauge = gauge
+      earlierSlack = slack
+      return next
+    },
+    low: closedGaugePa,
+    high: openGaugePa,
+    guess: (closedGaugePa + openGaugePa) / 2,
+    widthTolerance: 1e-9,
+    residualTolerance: 1e-8,
+    zeroTolerance: 0,
+    offset: ambientPa,
+  }).high
 }
 
 /** The check of a rig already prepared; see checkPressure. */
@@ -141,9 +201,11 @@ export function checkPrepared(rig: PreparedRig, targetGaugePa: number): Pressure
   const isReached = target.atTarget !== null && target.reason === null
   const isSafe = isReached && target.atTarget!.airMargin >= safeAirMargin
   return {
-    ...target,
     verdict: isSafe ? 'holds' : isReached ? 'barely-holds' : 'falls-short',
     operatingPoint,
+    atTarget: target.atTarget,
+    reason: target.reason,
+    obstacle: target.obstacle,
   }
 }
 

@@ -1,11 +1,8 @@
 import { elementPressureDrop } from './line.ts'
 import { gaugeAtMassFlow } from './nozzle.ts'
-import { solvePrepared } from './operatingPoint.ts'
 import type { OperatingPoint } from './operatingPoint.ts'
 import type { LineFlow } from './line.ts'
-import { prepareRig } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
-import type { LineElement, Rig, Site } from './rig.ts'
 
 export interface PressureLoss {
   /** the air line, or an outlet's own line */
@@ -59,64 +56,4 @@ export function listPressureLosses(
   const held: PressureLoss[] =
     regulatorDrop > 0 ? [{ place: 'regulator', index: 0, name: 'regulator', dropPa: regulatorDrop }] : []
   return [...air, ...held, ...own]
-}
-
-export interface WiderElement {
-  place: 'air-line' | 'outlet-line'
-  index: number
-  insideDiameterM: number
-  /** what the lowest nozzle gains, Pa */
-  gainPa: number
-}
-
-/**
- * Which single hose, taken one usual size wider, gives the lowest nozzle the most. In the outlets' lines it is the hose
- * at one place of the first outlet's, taken as wide at the same place of the others.
- *
- * Inputs   rig, site · the usual inside diameters, rising, m · may this element be exchanged?
- * Result   the best exchange, or null when none gains anything (below the set pressure of a flat nameplate none can)
- */
-export function findBestWiderElement(
-  rig: Rig,
-  site: Site,
-  diametersM: readonly number[],
-  canChange: (element: LineElement) => boolean,
-): WiderElement | null {
-  const lowest = (trial: Rig) => {
-    const { operatingPoint } = solvePrepared(prepareRig(trial, site))
-    return operatingPoint ? Math.min(...operatingPoint.outlets.map((o) => o.nozzlePressurePa)) : NaN
-  }
-  const before = lowest(rig)
-  let best: WiderElement | null = null
-  const consider = (
-    element: LineElement,
-    place: WiderElement['place'],
-    index: number,
-    exchange: (wider: LineElement) => Rig,
-  ) => {
-    if (!canChange(element)) return
-    const insideDiameterM = diametersM.find((d) => d > element.insideDiameterM * 1.001)
-    if (insideDiameterM === undefined) return
-    const gainPa = lowest(exchange({ ...element, insideDiameterM })) - before
-    if (gainPa > (best?.gainPa ?? 0)) best = { place, index, insideDiameterM, gainPa }
-  }
-  const replaceAt = (line: readonly LineElement[], index: number, wider: LineElement) =>
-    line.map((element, i) => (i === index ? wider : element))
-  rig.airLine.forEach((element, index) =>
-    consider(element, 'air-line', index, (wider) => ({
-      ...rig,
-      airLine: replaceAt(rig.airLine, index, wider),
-    })),
-  )
-  rig.outlets[0]?.line.forEach((element, index) =>
-    consider(element, 'outlet-line', index, ({ insideDiameterM }) => ({
-      ...rig,
-      outlets: rig.outlets.map((outlet) => {
-        const own = outlet.line[index]
-        if (!own || own.insideDiameterM >= insideDiameterM) return outlet
-        return { ...outlet, line: replaceAt(outlet.line, index, { ...own, insideDiameterM }) }
-      }),
-    })),
-  )
-  return best
 }

@@ -38,7 +38,7 @@ const mostEvaluations = 200
  *
  * Ends     bracket ≤ widthTolerance and residual ≤ residualTolerance, or residual ≤ zeroTolerance, or nothing left
  *          between the ends (the function jumps there: the root is the jump); never more than 200 evaluations
- * Result   the best x seen
+ * Result   the best x seen, and the bracket: both ends are x itself after an exact zero
  */
 export function findRoot(search: RootSearch): Root {
   const { evaluate, propose, widthTolerance, residualTolerance, zeroTolerance } = search
@@ -63,7 +63,10 @@ export function findRoot(search: RootSearch): Root {
         bestX = x
         bestResidual = residual
       }
-      if (Math.abs(residual) <= zeroTolerance) break
+      if (Math.abs(residual) <= zeroTolerance) {
+        low = high = x
+        break
+      }
       if (residual < 0) low = x
       else {
         high = x

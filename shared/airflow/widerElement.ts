@@ -1,8 +1,15 @@
 import { solvePrepared } from './operatingPoint.ts'
 import type { OperatingPoint } from './operatingPoint.ts'
-import type { WiderElement } from './pressureLosses.ts'
 import { prepareRig } from './preparedRig.ts'
 import type { LineElement, Rig, Site } from './rig.ts'
+
+export interface WiderElement {
+  place: 'air-line' | 'outlet-line'
+  index: number
+  insideDiameterM: number
+  /** what the lowest nozzle gains, Pa */
+  gainPa: number
+}
 
 function lowestNozzlePressure(rig: Rig, site: Site): number {
   const { operatingPoint } = solvePrepared(prepareRig(rig, site))
@@ -19,7 +26,7 @@ function lowestNozzlePressure(rig: Rig, site: Site): number {
  * Result   the best exchange with its gain Pa, or null when none gains anything
  * Checked  tests/shared/airflow/widerElement.test.ts
  */
-export function findBestWiderElementTo(
+export function findBestWiderElement(
   rig: Rig,
   site: Site,
   outletIndex: number,

@@ -1,56 +1,44 @@
-import { execFileSync } from 'node:child_process'
 import { mkdtempSync } from 'node:fs'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { defineConfig } from '@playwright/test'
+import { chromiumArguments, findChromium } from '../support/chromium.ts'
 
 const projectRoot = join(import.meta.dirname, '../..')
-const port = 3117
-
-function findChromium(): string {
-  return execFileSync('sh', ['-c', 'command -v chromium || command -v chromium-browser'], {
-    encoding: 'utf8',
-  }).trim()
-}
+// Workers read this file again: what the first reading chose is handed on in the environment.
+const dataDir = (process.env.SIXTEENTH_E2E_DATA ??= mkdtempSync(join(tmpdir(), 'sixteenth-e2e-')))
 
 export default defineConfig({
   testDir: '.',
   outputDir: join(projectRoot, 'test-results'),
+  globalTeardown: './support/removeData.ts',
   fullyParallel: true,
   workers: 2,
   forbidOnly: true,
   timeout: 30_000,
   use: {
-    baseURL: `http://127.0.0.1:${port}`,
+    // The port is the one the server says it has taken.
+    baseURL: `http://127.0.0.1:${process.env.SIXTEENTH_PORT}`,
     browserName: 'chromium',
+    locale: 'en-US',
+    colorScheme: 'light',
     trace: 'retain-on-failure',
-    launchOptions: {
-      executablePath: findChromium(),
-      args: [
-        '--no-sandbox',
-        '--disable-gpu',
-        '--disable-quic',
-        '--no-first-run',
-        '--disable-background-networking',
-        '--disable-component-update',
-        '--disable-sync',
-      ],
-    },
+    launchOptions: { executablePath: findChromium(), args: chromiumArguments },
   },
   projects: [
     { name: 'phone', use: { viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true } },
-    { name: 'desk', use: { viewport: { width: 1440, height: 900 } } },
+    // What does not depend on the screen is tried on one of them.
+    { name: 'desk', use: { viewport: { width: 1440, height: 900 } }, testIgnore: /(links|width)\.spec\.ts/ },
   ],
   webServer: {
     command: 'node --import tsx server/index.ts',
     cwd: projectRoot,
-    url: `http://127.0.0.1:${port}/api/v1/health`,
-    reuseExistingServer: false,
+    wait: { stdout: /http:\/\/127\.0\.0\.1:(?<SIXTEENTH_PORT>\d+)/ },
     env: {
       NODE_ENV: 'test',
       HOST: '127.0.0.1',
-      PORT: String(port),
-      DATA_DIR: mkdtempSync(join(tmpdir(), 'sixteenth-e2e-')),
+      PORT: '0',
+      DATA_DIR: dataDir,
       CHECK_RATE_PER_MINUTE: 'off',
     },
   },

@@ -1,0 +1,146 @@
+import AxeBuilder from '@axe-core/playwright'
+import type { Page } from '@playwright/test'
+import { expect, test } from './support/test.ts'
+
+async function useTheme(page: Page, theme: string) {
+  await page.addInitScript((name) => {
+    localStorage.setItem('sixteenth.preferences', JSON.stringify({ theme: name }))
+  }, theme)
+}
+
+/** Serious and critical findings, each with the first place it stands. */
+async function findBarriers(page: Page): Promise<string[]> {
+  const { violations } = await new AxeBuilder({ page }).options({ resultTypes: ['violations'] }).analyze()
+  return violations
+    .filter(({ impact }) => impact === 'serious' || impact === 'critical')
+    .map(({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html).join(' ')}`)
+}
+
+for (const theme of ['light', 'dark', 'sun']) {
+  test(`axe finds nothing serious in the ${theme} theme`, async ({ check, page }) => {
+    await useTheme(page, theme)
+    await check.open()
+    await check.waitForPanels()
+    await check.openEverything()
+    await check.type('Target at the nozzle', 'a lot')
+    await check.type('Nozzle, new', '9')
+    expect(await findBarriers(page), 'the check with all open and two fields wrong').toEqual([])
+    await check.goTo('settings')
+    await expect(page.getByRole('heading', { level: 1 })).toHaveText('Settings')
+    expect(await findBarriers(page), 'settings').toEqual([])
+    await check.goTo('sources')
+    await expect(page.getByRole('heading', { level: 1 })).toHaveText('Where the figures come from')
+    expect(await findBarriers(page), 'sources').toEqual([])
+  })
+}
+
+test('everything that is touched is 48 px high', async ({ check, page }) => {
+  await check.open()
+  await check.waitForPanels()
+  await check.openEverything()
+  const small = await page.evaluate(() => {
+    // A field is touched anywhere on its card, a hidden box by its label.
+    const areaOf = (element: Element) => element.closest('.quantity, label, .choice') ?? element
+    return [...document.querySelectorAll('button, a, summary, input, select, [role="slider"]')]
+      .filter((element) => element.checkVisibility() && !element.matches('.skip'))
+      .map((element) => ({ element, height: areaOf(element).getBoundingClientRect().height }))
+      .filter(({ height, element }) => {
+        const isCell = element.closest('[data-testid="air-use"] td') && innerWidth >= 700
+        return height < (isCell ? 32 : 48)
+      })
+      .map(({ element, height }) => `${height}: ${element.outerHTML.slice(0, 120)}`)
+  })
+  expect(small).toEqual([])
+})
+
+test('the keyboard alone changes the check, and always shows where it is', async ({ check, page }) => {
+  await check.open()
+  const focused = page.locator(':focus')
+  await page.keyboard.press('Tab')
+  await expect(focused).toHaveText('Skip to the verdict')
+  await expect(focused).toBeInViewport()
+  await page.keyboard.press('Enter')
+  await expect(page.locator('#main')).toBeFocused()
+
+  const target = check.field('Target at the nozzle')
+  for (let i = 0; i < 20 && !(await target.evaluate((element) => element === document.activeElement)); i++)
+    await page.keyboard.press('Tab')
+  await expect(target).toBeFocused()
+  await page.keyboard.press('Control+A')
+  await page.keyboard.type('140 psi')
+  await expect(check.verdict).toHaveText('Falls short')
+  await page.keyboard.press('Control+A')
+  await page.keyboard.type('90 psi')
+  await expect(check.verdict).toHaveText('Holds')
+
+  const compressor = check.group('Compressor')
+  for (let i = 0; i < 6 && !(await compressor.evaluate((element) => element === document.activeElement)); i++)
+    await page.keyboard.press('Tab')
+  await expect(compressor).toBeFocused()
+  expect(await outlineOf(page)).toBeGreaterThanOrEqual(2)
+  await page.keyboard.press('Enter')
+  await expect(compressor).toHaveAttribute('aria-expanded', 'true')
+
+  const aftercooled = page.getByRole('radio', { name: 'aftercooled' })
+  for (
+    let i = 0;
+    i < 40 && !(await aftercooled.evaluate((element) => element === document.activeElement));
+    i++
+  )
+    await page.keyboard.press('Tab')
+  await expect(aftercooled).toBeFocused()
+  expect(await outlineOf(page)).toBeGreaterThanOrEqual(2)
+  await page.keyboard.press('ArrowRight')
+  await expect(page.getByRole('radio', { name: 'bare' })).toBeChecked()
+  await expect(compressor).toContainText('bare')
+})
+
+/** The widest line around what has the focus or around the card it stands in, px. */
+function outlineOf(page: Page): Promise<number> {
+  return page.evaluate(() => {
+    let widest = 0
+    const closest = [document.activeElement, document.activeElement?.closest('label, .quantity')]
+    for (const element of closest) {
+      if (!element) continue
+      const style = getComputedStyle(element)
+      if (style.outlineStyle !== 'none') widest = Math.max(widest, parseFloat(style.outlineWidth))
+      const ring = /0px 0px 0px (\d+)px/.exec(style.boxShadow)
+      if (ring) widest = Math.max(widest, Number(ring[1]))
+    }
+    return widest
+  })
+}
+
+test('each stop of the Tab key can be seen', async ({ check, page }) => {
+  await check.open()
+  await check.waitForPanels()
+  const unseen: string[] = []
+  for (let i = 0; i < 60; i++) {
+    await page.keyboard.press('Tab')
+    const name = await page.evaluate(() => document.activeElement?.outerHTML.slice(0, 100) ?? '')
+    if (name.startsWith('<body')) break
+    if ((await outlineOf(page)) < 2) unseen.push(name)
+  }
+  expect(unseen).toEqual([])
+})
+
+test('the mark of the bore now is moved by keys and by a thumb', async ({ check, page }) => {
+  await check.open()
+  const slider = page.getByTestId('bore-slider')
+  await slider.focus()
+  await page.keyboard.press('Home')
+  await expect(check.field('Bore now')).toHaveValue('7/16 in')
+  await page.keyboard.press('ArrowRight')
+  await expect(check.field('Bore now')).toHaveValue('29/64 in')
+  const before = Number(await check.pressure.textContent())
+  await page.keyboard.press('PageUp')
+  await expect(check.field('Bore now')).toHaveValue('33/64 in')
+  expect(Number(await check.pressure.textContent())).toBeLessThan(before)
+
+  const box = (await slider.boundingBox())!
+  await page.mouse.move(box.x + box.width / 2, box.y + box.height / 2)
+  await page.mouse.down()
+  await page.mouse.move(box.x - 400, box.y + box.height / 2, { steps: 5 })
+  await page.mouse.up()
+  await expect(check.field('Bore now')).toHaveValue('7/16 in')
+})
