@@ -41,7 +41,10 @@ function precompress(): Plugin {
 /** What of Inter the verdict is drawn in. */
 const heroFonts = /inter-latin-(400|800)-normal-[^/]*\.woff2$/
 
-/** The page a visitor finds is drawn into index.html, so that its verdict stands before any script has run. */
+/**
+ * The page a visitor finds is drawn into index.html, styles and theme within, so that its verdict stands with the first
+ * answer of the server and before any script of the application has run.
+ */
 function prerender(): Plugin {
   const outDir = join(import.meta.dirname, 'node_modules/.sixteenth/prerender')
   async function draw(): Promise<string> {
@@ -63,9 +66,17 @@ function prerender(): Plugin {
     transformIndexHtml: {
       order: 'post',
       async handler(page, { bundle = {} }) {
+        const drawn = await draw()
+        const theme = readFileSync(join(import.meta.dirname, 'src/public/theme.js'), 'utf8')
         const fonts = Object.keys(bundle).filter((name) => heroFonts.test(name))
         return {
-          html: page.replace('<!--app-->', await draw()),
+          html: page
+            .replace('<!--app-->', () => drawn)
+            .replace('<script src="/theme.js"></script>', () => `<script>${theme}</script>`)
+            .replace(/<link rel="stylesheet"[^>]*href="\/([^"]+)"[^>]*>/g, (link, name: string) => {
+              const file = bundle[name]
+              return file?.type === 'asset' ? `<style>${file.source.toString()}</style>` : link
+            }),
           tags: fonts.map((name) => ({
             tag: 'link',
             attrs: { rel: 'preload', href: `/${name}`, as: 'font', type: 'font/woff2', crossorigin: '' },

@@ -59,11 +59,12 @@ export function marchOutlet(outlet: PreparedOutlet, massFlow: number, march: Mar
 }
 
 /**
- * Flow of one outlet whose line is fed at a gauge pressure, after its regulator: the march inverted.
+ * Flow of one outlet whose line is fed at a gauge pressure (its regulator applied): the march inverted.
  *
  * Result   kg/s; where an element is choked it is what the choke passes, as a march at it tells
  */
-export function outletMassFlow(outlet: PreparedOutlet, feedGauge: number, guess: number): number {
+export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, guess: number): number {
+  const feedGauge = Math.min(manifoldGaugePa, outlet.regulatorGaugePa)
   if (feedGauge <= 0) return 0
   const most = massFlowAtGauge(outlet.nozzle, feedGauge)
   if (outlet.line.length === 0) return most

@@ -77,7 +77,7 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
     const flow = massFlowAtGauge(outlet.nozzle, targetGaugePa)
     restartMarch(march, targetGaugePa)
     marchBack(outlet.line, flow, ambientPa, march)
-    if (march.choked) return choked(march.choked, 'line', march.tightness)
+    
     const excess = march.gaugePa / (outlet.regulatorGaugePa * (1 + regulatorSlack)) - 1
     nearest = Math.max(nearest, excess, march.tightness - 1)
     if (excess > 0) return { atTarget: null, reason: `regulator:${i + 1}`, obstacle: 'regulator', excess }
@@ -89,7 +89,7 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
   if (rig.outlets.length > 1) {
     total = feedOutlets(rig, manifoldGauge, flows)
     marchOutlets(rig, flows.massFlows, march)
-    if (march.choked) return choked(march.choked, 'line', march.tightness)
+    
     nearest = Math.max(nearest, march.tightness - 1)
   }
   restartMarch(march, manifoldGauge)
@@ -106,9 +106,15 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
   const carried = weighAir(rig, total, manifoldGauge, march.gaugePa)
   if (carried.excess >= 0)
     return { ...choked(march.choked, 'air-line', march.tightness), excess: carried.excess }
+  const heldExcess = weighAllHeld(rig, flows)
+  if (heldExcess < 0 && !wantsFigures) {
+    return { atTarget: null, reason: null, obstacle: 'air-line', excess: heldExcess }
+  }
   const balance = findBalance(rig)
-  if (balance.manifoldGaugePa <= manifoldGauge) return choked(march.choked, 'air-line', march.tightness)
-  if (balance.choked) return choked(march.choked, 'air-line', balance.tightness)
+  if (balance.choked || balance.manifoldGaugePa <= manifoldGauge) {
+    const excess = heldExcess < Infinity ? heldExcess : Math.max(march.tightness, balance.tightness) - 1
+    return { ...choked(march.choked, 'air-line', march.tightness), excess }
+  }
   // at the edge the manifold leaves the choke like a root: squared it comes in straight
   const behindChoke = { reason: null, obstacle: 'air-line', excess: -((1 - balance.tightness) ** 2) } as const
   if (!wantsFigures) return { atTarget: null, ...behindChoke }
@@ -121,6 +127,20 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
 
 function choked(element: LineFlow, obstacle: 'line' | 'air-line', tightness: number): TargetTrial {
   return { atTarget: null, reason: `choked:${element.name}`, obstacle, excess: tightness - 1 }
+}
+
+/**
+ * The shortage of air, of full-load delivery, with every regulator holding: below 0 the rig runs above all of them, and
+ * the air line is open there, for the compressor's pressure is over the least that passes the flow. Infinity where an
+ * outlet has no regulator.
+ */
+function weighAllHeld(rig: PreparedRig, flows: OutletFlows): number {
+  const gauge = Math.max(...rig.outlets.map((outlet) => outlet.regulatorGaugePa))
+  if (gauge === Infinity) return Infinity
+  const total = feedOutlets(rig, gauge, flows)
+  const march = startMarch(gauge)
+  marchBack(rig.airLine, total, rig.ambient.pressurePa, march)
+  return weighAir(rig, total, gauge, march.gaugePa).excess
 }
 
 /** The air at a target whose lines are all open: total flow of the nozzles kg/s, pressures Pa gauge. */

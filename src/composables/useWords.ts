@@ -5,11 +5,22 @@ import type { FormattedQuantity } from '#shared/units/format.ts'
 import type { QuantityKind } from '#shared/units/quantities.ts'
 import { usePreferencesStore } from '../stores/preferences.ts'
 
+/** Sentences without a gap to fill, by language: a screen asks for hundreds of them at each touch. */
+const plainWords = new Map<string, string>()
+
 /** Numbers and sentences in the person's units and language. */
 export function useWords() {
-  const { t, te } = useI18n()
+  const { t: translate, te, locale } = useI18n({ useScope: 'global' })
   const preferences = usePreferencesStore()
   const system = computed(() => preferences.units)
+
+  function t(key: string, words?: Record<string, unknown>, count?: number): string {
+    if (words) return count === undefined ? translate(key, words) : translate(key, words, count)
+    const place = `${locale.value}.${key}`
+    let text = plainWords.get(place)
+    if (text === undefined) plainWords.set(place, (text = translate(key)))
+    return text
+  }
 
   /** Number and unit apart, for where the unit is set smaller. */
   function parts(kind: QuantityKind, value: number, digits?: number): FormattedQuantity {

@@ -1,5 +1,5 @@
 import { defineStore } from 'pinia'
-import { ref } from 'vue'
+import { computed, ref } from 'vue'
 import { createCheckForm } from '#shared/form/checkForm.ts'
 import { readFragment, writeFragment } from '#shared/form/fragment.ts'
 import { toTypedText } from '#shared/units/format.ts'
@@ -15,18 +15,24 @@ function roundBore(boreMm: number): number {
 export const usePressureCheckStore = defineStore('pressureCheck', () => {
   const form = ref(createCheckForm())
   const isLinkBroken = ref(false)
+  const leftFragment = ref<string | null>(null)
+  const canUndo = computed(() => leftFragment.value !== null && fragment() === '')
   let isOpen = false
 
-  function open(fragment: string) {
-    const read = readFragment(fragment)
+  function fragment(): string {
+    return writeFragment(form.value)
+  }
+
+  function open(said: string) {
+    const read = readFragment(said)
     form.value = read.form
     isLinkBroken.value = read.isBroken
     isOpen = true
   }
 
   /** Who comes back from another page brings no fragment: the check is as it was left. */
-  function resume(fragment: string) {
-    if (fragment !== '' || !isOpen) open(fragment)
+  function resume(said: string) {
+    if (said !== '' || !isOpen) open(said)
   }
 
   /** The bore now as if it had been typed. */
@@ -35,8 +41,15 @@ export const usePressureCheckStore = defineStore('pressureCheck', () => {
     if (outlet) outlet.boreNow = { text: toTypedText('bore', roundBore(boreMm), system), system }
   }
 
+  /** A clean check; the one left can be had back until something is typed into the new one. */
   function startOver() {
+    leftFragment.value = writeFragment(form.value)
     open('')
+  }
+
+  function undoStartOver() {
+    if (leftFragment.value !== null) open(leftFragment.value)
+    leftFragment.value = null
   }
 
   return {
@@ -45,7 +58,9 @@ export const usePressureCheckStore = defineStore('pressureCheck', () => {
     open,
     resume,
     startOver,
+    undoStartOver,
+    canUndo,
     typeBoreNow,
-    fragment: () => writeFragment(form.value),
+    fragment,
   }
 })

@@ -89,7 +89,7 @@ test('nothing jumps while a bore is typed', async ({ check, page }) => {
   expect(Math.max(0, ...shifts.map(({ value }) => value)), JSON.stringify(shifts)).toBeLessThan(0.02)
 })
 
-test('a check that is open still answers without a network', async ({ check, page, context }) => {
+test('a check that is open still answers without a network', async ({ check, context }) => {
   await check.open()
   await check.waitForPanels()
   const before = await check.pressure.textContent()

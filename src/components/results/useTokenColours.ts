@@ -18,11 +18,12 @@ export function useTokenColours() {
     colours.value = readTokens()
   })
   onMounted(() => {
-    colours.value = readTokens()
     // A canvas drawn before Inter has arrived keeps the fallback until it is drawn again.
-    void document.fonts?.ready.then(() => {
-      if (isShown) colours.value = readTokens()
-    })
+    if (document.fonts?.status === 'loading') {
+      void document.fonts.ready.then(() => {
+        if (isShown) colours.value = readTokens()
+      })
+    }
     observer.observe(document.documentElement, { attributes: true, attributeFilter: ['data-theme'] })
   })
   onBeforeUnmount(() => {

@@ -45,6 +45,7 @@ export const common = {
     shared: 'Link copied',
     shareFailed: 'Copy the address from the bar above',
     reset: 'Start over',
+    undo: 'Undo',
     guidance:
       'Guidance, not permission: the manuals of the machines, local codes and a competent person decide.',
   },
@@ -68,7 +69,8 @@ export const common = {
     noGo: 'No-go bit',
     orderText: 'If {bit} goes all the way through, order the next nozzle.',
     noGoText: 'If {bit} goes all the way through, stop using this nozzle at {target}.',
-    noWarning: 'A new {nozzle} already passes the last bit under the limit: no warning bit here, order now.',
+    noWarningBit: 'A new {nozzle} already passes {bit}: no warning bit here, order now.',
+    noWarning: 'A new {nozzle} is past every bit under the limit: no warning bit here, order now.',
     noHelp: 'No bit helps: this compressor cannot hold a new {nozzle} at {target}.',
     fits: 'A {nozzle} fits.',
     noneFits: 'No nozzle from No. 2 up fits.',
@@ -86,6 +88,7 @@ export const common = {
     safety:
       'Compressor off, hose bled, deadman locked, nozzle off the hose. Turn a twist bit by hand from the threaded end and never force it; it is through when it passes the narrow part. Rinse and look through first: a crack retires the nozzle whatever the bit says.',
   },
+  panels: { loading: 'Drawing …', failed: 'This part could not be fetched.', retry: 'Try again' },
   cautions: { title: 'Cautions', more: 'And {count} more' },
   safety: {
     title: 'Before you blast',

@@ -48,6 +48,7 @@ export const common = {
     shared: 'Enlace copiado',
     shareFailed: 'Copie la dirección de la barra de arriba',
     reset: 'Empezar de nuevo',
+    undo: 'Deshacer',
     guidance:
       'Es una guía, no un permiso: deciden los manuales de las máquinas, las normas del lugar y una persona competente.',
   },
@@ -72,8 +73,9 @@ export const common = {
     noGo: 'Broca de alto',
     orderText: 'Si la de {bit} pasa entera, pida la boquilla siguiente.',
     noGoText: 'Si la de {bit} pasa entera, no use más esta boquilla a {target}.',
+    noWarningBit: 'Por una {nozzle} nueva ya pasa la {bit}: aquí no hay broca que avise, pida ya.',
     noWarning:
-      'Una boquilla {nozzle} nueva ya deja pasar la última broca antes del límite: aquí ninguna avisa, pida ya la siguiente.',
+      'Ninguna broca bajo el límite sirve con una {nozzle} nueva: aquí no hay broca que avise, pida ya.',
     noHelp: 'No hay broca que valga: este compresor no aguanta {target} con una boquilla {nozzle} nueva.',
     fits: 'Con una {nozzle} sí.',
     noneFits: 'No aguanta con ninguna desde la No. 2.',
@@ -91,6 +93,7 @@ export const common = {
     safety:
       'Compresor apagado, manguera purgada, control de hombre muerto bloqueado, boquilla fuera de la manguera. La broca se gira a mano desde el lado de la rosca y nunca se fuerza; pasó cuando libra la parte angosta. Antes, enjuague y mire a través: una grieta retira la boquilla diga lo que diga la broca.',
   },
+  panels: { loading: 'Dibujando …', failed: 'No se pudo traer esta parte.', retry: 'Intentar otra vez' },
   cautions: { title: 'Cuidado', more: 'Y {count} más' },
   safety: {
     title: 'Antes de chorrear',

@@ -52,10 +52,13 @@ export class CheckScreen {
     await expect(this.form.locator('[aria-expanded="false"]')).toHaveCount(0)
   }
 
-  /** The charts and panels that are fetched once the verdict stands. */
+  /** The panels come once the verdict stands, the chart when it is about to be seen. */
   async waitForPanels() {
-    for (const id of ['draw-curve', 'air-use', 'losses', 'fit', 'hour'])
+    for (const id of ['air-use', 'losses', 'fit', 'hour'])
       await expect(this.page.getByTestId(id)).toBeVisible()
+    await this.page.locator('.curve').first().scrollIntoViewIfNeeded()
+    await expect(this.page.getByTestId('draw-curve')).toBeVisible()
+    await this.page.evaluate(() => scrollTo(0, 0))
   }
 
   async goTo(page: 'check' | 'sources' | 'settings') {

@@ -26,7 +26,7 @@ function showBits(
   }
   const { wrapper } = mountInApp(
     WarningBits,
-    { outlet: answer, newBoreMm, targetKpa: 100 * psi },
+    { outlet: answer, newBoreMm, targetKpa: 100 * psi, bitSet: 'fractional-64' },
     { units, language },
   )
   const texts = (selector: string) => wrapper.findAll(selector).map(textOf)
@@ -58,7 +58,7 @@ describe('the warning bits', () => {
     expect(order).toEqual([
       'Order bit',
       'none',
-      'A new No. 6 already passes the last bit under the limit: no warning bit here, order now.',
+      'A new No. 6 already passes 3/8: no warning bit here, order now.',
     ])
   })
 
