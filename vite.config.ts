@@ -38,6 +38,17 @@ function precompress(): Plugin {
   }
 }
 
+const entryScript = /<script type="module"[^>]* src="([^"]+)"><\/script>/
+
+/** Where the page as drawn is the right one, its first paint waits for no script, not even for one that is kept. */
+function startAfterPaint(entry: string): string {
+  const start = `const start = () => import('${entry}')
+      const isWaiting = !document.hidden && !document.documentElement.classList.contains('is-starting')
+      if (isWaiting) new PerformanceObserver(start).observe({ type: 'paint', buffered: true })
+      setTimeout(start, isWaiting ? 1000 : 0)`
+  return `<link rel="modulepreload" crossorigin href="${entry}"><script type="module">${start}</script>`
+}
+
 /** What of Inter the verdict is drawn in. */
 const heroFonts = /inter-latin-(400|800)-normal-[^/]*\.woff2$/
 
@@ -73,6 +84,8 @@ function prerender(): Plugin {
           html: page
             .replace('<!--app-->', () => drawn)
             .replace('<script src="/theme.js"></script>', () => `<script>${theme}</script>`)
+            .replace(entryScript, (_, name: string) => startAfterPaint(name))
+            .replaceAll('rel="modulepreload"', 'rel="modulepreload" fetchpriority="low"')
             .replace(/<link rel="stylesheet"[^>]*href="\/([^"]+)"[^>]*>/g, (link, name: string) => {
               const file = bundle[name]
               return file?.type === 'asset' ? `<style>${file.source.toString()}</style>` : link

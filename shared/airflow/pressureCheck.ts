@@ -77,7 +77,7 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
     const flow = massFlowAtGauge(outlet.nozzle, targetGaugePa)
     restartMarch(march, targetGaugePa)
     marchBack(outlet.line, flow, ambientPa, march)
-    
+    if (march.choked) return choked(march.choked, 'line', march.tightness)
     const excess = march.gaugePa / (outlet.regulatorGaugePa * (1 + regulatorSlack)) - 1
     nearest = Math.max(nearest, excess, march.tightness - 1)
     if (excess > 0) return { atTarget: null, reason: `regulator:${i + 1}`, obstacle: 'regulator', excess }
@@ -89,7 +89,7 @@ export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigu
   if (rig.outlets.length > 1) {
     total = feedOutlets(rig, manifoldGauge, flows)
     marchOutlets(rig, flows.massFlows, march)
-    
+    if (march.choked) return choked(march.choked, 'line', march.tightness)
     nearest = Math.max(nearest, march.tightness - 1)
   }
   restartMarch(march, manifoldGauge)

@@ -5,12 +5,14 @@ import type { FormattedQuantity } from '#shared/units/format.ts'
 import type { QuantityKind } from '#shared/units/quantities.ts'
 import { usePreferencesStore } from '../stores/preferences.ts'
 
-/** Sentences without a gap to fill, by language: a screen asks for hundreds of them at each touch. */
+/** Sentences without a gap, by language: hundreds are asked for at each touch, and none needs the compiler. */
 const plainWords = new Map<string, string>()
+
+const stepInto = (tree: unknown, name: string) => (tree as Record<string, unknown> | undefined)?.[name]
 
 /** Numbers and sentences in the person's units and language. */
 export function useWords() {
-  const { t: translate, te, locale } = useI18n({ useScope: 'global' })
+  const { t: translate, te, locale, getLocaleMessage } = useI18n({ useScope: 'global' })
   const preferences = usePreferencesStore()
   const system = computed(() => preferences.units)
 
@@ -18,7 +20,11 @@ export function useWords() {
     if (words) return count === undefined ? translate(key, words) : translate(key, words, count)
     const place = `${locale.value}.${key}`
     let text = plainWords.get(place)
-    if (text === undefined) plainWords.set(place, (text = translate(key)))
+    if (text === undefined) {
+      const written = key.split('.').reduce<unknown>(stepInto, getLocaleMessage(locale.value))
+      text = typeof written === 'string' && !/[{}@|]/.test(written) ? written : translate(key)
+      plainWords.set(place, text)
+    }
     return text
   }
 

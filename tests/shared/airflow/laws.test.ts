@@ -35,7 +35,7 @@ function everyRig(
       rigsDrawn++
       if (law(questionOfCheck(body)) !== false) spoken++
     }),
-    { seed, numRuns },
+    { seed, numRuns, endOnFailure: true },
   )
   return spoken
 }
