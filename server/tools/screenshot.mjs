@@ -1,9 +1,12 @@
 /* Draws the README's picture from the running application: npm start, then npm run screenshot. */
+import { execFileSync } from 'node:child_process'
 import { chromium } from '@playwright/test'
 
 const address = process.env.ADDRESS ?? `http://127.0.0.1:${process.env.PORT ?? 3000}/`
 const browser = await chromium.launch({
-  executablePath: process.env.CHROMIUM ?? '/usr/bin/chromium',
+  executablePath: execFileSync('sh', ['-c', 'command -v chromium || command -v chromium-browser'], {
+    encoding: 'utf8',
+  }).trim(),
   args: ['--no-sandbox', '--disable-gpu', '--no-first-run', '--disable-background-networking'],
 })
 const page = await browser.newPage({ viewport: { width: 1440, height: 1180 } })

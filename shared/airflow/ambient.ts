@@ -47,7 +47,14 @@ export function saturationPressure(temperatureK: number): number {
   return 610.94 * Math.exp((17.625 * t) / (t + 243.04))
 }
 
-/** kg of water vapour carried by a kg of dry air; vapour and total pressure in Pa absolute, vapour below total. */
+/**
+ * Water vapour carried by dry air.
+ *
+ *   w = 0.622 p_v / (p − p_v)        kg/kg
+ *
+ * Inputs   vapour and total pressure Pa absolute, vapour below total
+ * Source   Dalton, ratio of molar masses        Checked  tests/shared/airflow/cautions.test.ts
+ */
 export function humidityRatio(vapourPa: number, pressurePa: number): number {
   return (vapourMassRatio * vapourPa) / (pressurePa - vapourPa)
 }
@@ -78,7 +85,7 @@ export function resolveAmbient(site: Site): Ambient {
  *   μ = 1.716e-5 (T / 273.15)^1.5 (273.15 + 110.4) / (T + 110.4)        Pa s
  *
  * Inputs   T temperature K        Valid  170 to 1,900 K, 2 %
- * Source   Sutherland's law with White's constants        Checked  tests/reference/line.test.ts
+ * Source   Sutherland's law with White's constants        Checked  tests/reference/atmosphere.test.ts
  */
 export function viscosity(temperatureK: number): number {
   const ratio = temperatureK / 273.15

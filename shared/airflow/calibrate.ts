@@ -48,6 +48,8 @@ export interface Calibration {
 export const conditionFactorRange = { min: 0.3, max: 1.2 }
 export const lineFactorRange = { min: 0.1, max: 10 }
 const absentAccuracy = 0.03
+/** what is left of a drop that a factor explains, Pa */
+const nearlyNoPa = 1
 
 const scaleLosses = (line: readonly LineFlow[], factor: number): LineFlow[] =>
   line.map((element) => ({
@@ -86,7 +88,7 @@ function lineFactorFor(
     residualTolerance: 1e-3,
     zeroTolerance: 1e-9,
   })
-  return root.isMet ? root.x : NaN
+  return Math.abs(root.residual) <= nearlyNoPa ? root.x : NaN
 }
 
 /**

@@ -30,7 +30,8 @@ export interface Caution {
   sizePct: number
 }
 
-const naturalFromM = 305
+/** Altitude from which an engine loses 1 % of its power in every 100 m. */
+export const deratingFromM = { natural: 305, turbo: 1000 } as const
 /** Separators of screw compressors hold about this much back. From memory. */
 const lowCompressorGaugePa = 400e3
 
@@ -46,8 +47,7 @@ const lowCompressorGaugePa = 400e3
  */
 export function engineShortfall(compressor: Compressor, rig: PreparedRig, altitudeM: number): number {
   if (!compressor.engine) return 0
-  const from = compressor.engine === 'turbo' ? 1000 : naturalFromM
-  const have = 1 - Math.max(0, altitudeM - from) / 10000
+  const have = 1 - Math.max(0, altitudeM - deratingFromM[compressor.engine]) / 10000
   const { pressurePa, vapourPressurePa } = rig.ambient
   const setGauge = compressor.setPressurePa - pressurePa
   const duty = (ambientPa: number, dryPa: number) => dryPa * ((1 + setGauge / ambientPa) ** 0.2857 - 1)
@@ -58,8 +58,17 @@ export function engineShortfall(compressor: Compressor, rig: PreparedRig, altitu
 /**
  * What to be careful about in a check, the biggest first.
  *
+ *   air-only reading    0.97 / Cd − 1, more air with the media shut off
+ *   hose head           ½ ρ V² / p0 = ½ (Cd A Ψ / A_hose)², what a gauge in the last hose reads off the nozzle's p0
+ *   humid, bare         (1 + w) √(1 + 0.608 w / (1 + w)) − 1, the pressure that vapour kept in the air adds
+ *   above set           (p_req − p_set) / (p_unload − p_set), how far the machine has closed
+ *   barometer           |p / p(altitude) − 1|, from 4 %        low compressor        1 − p / 4 bar, gauge
+ *   below critical      1 − p0 / (p_amb / 0.528)               engine                see engineShortfall
+ *
  * Inputs   rig, site, the rig prepared, its check, target Pa gauge
  * Result   codes with their size in percent
+ * Source   perfect gas and moist air (gas constant 1 + 0.608 q times dry air's); 4 %, 4 bar, two and three bores, 25 K
+ *          and 2 % are the design's, no source        Checked  tests/shared/airflow/cautions.test.ts
  */
 export function findCautions(
   rig: Rig,
@@ -135,7 +144,12 @@ export function findCautions(
  * Water that leaves in drains and pot in an hour: inlet vapour of all the air delivered, less what saturated air holds
  * at the line's temperature and the compressor's pressure.
  *
- * Result   L/h (1 kg a litre), null without an operating point
+ *   3600 ṁ (w(p_v, p_amb) − w(p_sat(T0), p)),  never below 0        L/h, 1 kg a litre
+ *
+ * Inputs   rig, prepared · its check
+ * Result   L/h, null without an operating point
+ * Ignores  vapour that leaves as such with warm air past the drains
+ * Source   Dalton, humidityRatio        Checked  tests/shared/airflow/cautions.test.ts
  */
 export function waterToDrain(prepared: PreparedRig, check: PressureCheck): number | null {
   if (!check.operatingPoint) return null

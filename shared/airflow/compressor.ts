@@ -1,7 +1,10 @@
 import type { Ambient } from './ambient.ts'
 import type { AirDraw, Compressor } from './rig.ts'
 
-/** Free air by nameplate or by curve: linear between points, flat outside; m³/s at Pa absolute. */
+/**
+ * Free air by nameplate or by curve: linear between points, flat outside; m³/s at Pa absolute.
+ * Checked  tests/shared/airflow/parts.test.ts
+ */
 export function freeAirAt(compressor: Compressor, pressurePa: number): number {
   const { freeAir } = compressor
   if (typeof freeAir === 'number') return freeAir
@@ -30,7 +33,7 @@ export interface Delivery {
  *
  *   k · FAD(p) · ρd up to the set pressure, then a straight line from its value there to zero at unload        kg/s
  *
- * Source   free air delivery as in ISO 1217; the straight fall is the design's        Checked  tests/shared/airflow/compressor.test.ts
+ * Source   free air delivery as in ISO 1217; the straight fall is the design's        Checked  tests/shared/airflow/parts.test.ts
  */
 export function prepareDelivery(compressor: Compressor, ambient: Ambient): Delivery {
   const mass = (compressor.conditionFactor ?? 1) * ambient.dryAirDensity
@@ -70,7 +73,10 @@ export function fullLoadDeliveryAt(delivery: Delivery, pressurePa: number): numb
   return deliveryAt(delivery, Math.min(pressurePa, setPa))
 }
 
-/** The highest pressure at which at least this much is delivered, Pa absolute; NaN when that is nowhere. */
+/**
+ * The highest pressure at which at least this much is delivered, Pa absolute; NaN when that is nowhere.
+ * Checked  tests/shared/airflow/parts.test.ts
+ */
 export function pressureAtDelivery({ pressuresPa, massFlows }: Delivery, massFlow: number): number {
   if (massFlow > massFlows[0]!) return NaN
   for (let i = pressuresPa.length - 1; i > 0; i--) {

@@ -97,7 +97,10 @@ export function findLargestNozzles(
   return { whenNew, whenWorn }
 }
 
-/** What the other outlets see when one is shut: the operating point without it; null when it is the only one. */
+/**
+ * What the other outlets see when one is shut: the operating point without it; null when it is the only one.
+ * Checked  tests/shared/airflow/fit.test.ts
+ */
 export function solveWithOutletShut(
   rig: Rig,
   site: Site,

@@ -96,5 +96,6 @@ export function limitBore(
   outletIndex: number,
 ): LimitBore {
   const prepared = prepareRig(rig, site)
-  return limitBorePrepared(prepared, targetNozzlePressurePa - prepared.ambient.pressurePa, outletIndex)
+  const targetGaugePa = Math.max(0, targetNozzlePressurePa - prepared.ambient.pressurePa)
+  return limitBorePrepared(prepared, targetGaugePa, outletIndex)
 }

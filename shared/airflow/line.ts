@@ -133,6 +133,7 @@ function squareRise(chi: number, loss: number): number {
  *
  * Inputs   element, prepared · ṁ kg/s · p1 Pa absolute
  * Result   p2 Pa absolute, or NaN when this inlet pressure cannot pass the flow without choking
+ * Checked  tests/reference/line.test.ts, tests/shared/airflow/laws.test.ts
  */
 export function elementOutletPressure(element: LineFlow, massFlow: number, inletPa: number): number {
   const flux = (massFlow * element.chokePerFlow) ** 2

@@ -1,7 +1,7 @@
 import { gasConstant, heatRatio, resolveAmbient } from './ambient.ts'
 import type { Nozzle, Site } from './rig.ts'
 
-/** In service with media: midway between the two government points in tests/reference/blastNozzle.test.ts. */
+/** In service with media: midway between the two government points in tests/reference/nozzle.test.ts. */
 export const defaultDischargeCoefficient = 0.81
 /** The same nozzle with the media shut off. */
 export const cleanAirDischargeCoefficient = 0.97
@@ -39,7 +39,7 @@ export function prepareNozzle(nozzle: Nozzle, stagnationTemperatureK: number, am
  * Inputs   nozzle, prepared · gauge pressure Pa, never negative
  * Valid    a converging nozzle at any pressure; a venturi above 13 psig at sea level (understated below)
  * Ignores  real-gas effects, water (it leaves before the nozzle)
- * Source   isentropic flow, e.g. ISO 9300 for the choked branch        Checked  tests/reference/nozzle.test.ts
+ * Source   isentropic flow, e.g. ISO 9300 for the choked branch        Checked  tests/reference/orifice.test.ts
  */
 export function massFlowAtGauge(flow: NozzleFlow, gaugePa: number): number {
   const stagnationPa = flow.ambientPa + gaugePa
@@ -54,7 +54,7 @@ export function massFlowAtGauge(flow: NozzleFlow, gaugePa: number): number {
  * The other way round: gauge pressure before a nozzle from its mass flow, exact.
  *
  * Inputs   nozzle, prepared · ṁ kg/s, never negative        Result  Pa gauge
- * Source   inverse of massFlowAtGauge        Checked  tests/shared/airflow/nozzle.test.ts
+ * Source   inverse of massFlowAtGauge        Checked  tests/shared/airflow/parts.test.ts
  */
 export function gaugeAtMassFlow(flow: NozzleFlow, massFlow: number): number {
   const chokedPa = massFlow / (flow.conductance * criticalFlowFunction)
@@ -75,6 +75,7 @@ export function isThroatSonic(ambientPa: number, gaugePa: number): boolean {
  *
  * Inputs   nozzle (bore m, Cd) · stagnation pressure Pa absolute · site (its air temperature is taken as T0)
  * Result   kg/s; 0 at or below the site's pressure
+ * Checked  tests/reference/orifice.test.ts, tests/reference/nozzle.test.ts
  */
 export function nozzleMassFlow(nozzle: Nozzle, stagnationPressurePa: number, site: Site): number {
   const ambientPa = resolveAmbient(site).pressurePa

@@ -9,6 +9,7 @@ export type Reason =
   | 'short-of-air'
   | 'above-unload'
   | 'air-taken-first'
+  | 'no-nozzle'
   | 'bore-range'
   | `choked:${string}`
   | `regulator:${number}`
@@ -44,6 +45,7 @@ export interface OperatingPointResult {
 /** The operating point of a rig already prepared; see solveOperatingPoint. */
 export function solvePrepared(rig: PreparedRig): OperatingPointResult {
   if (rig.firstMassFlow >= rig.openMassFlow) return { operatingPoint: null, reason: 'air-taken-first' }
+  if (rig.outlets.length === 0) return { operatingPoint: null, reason: 'no-nozzle' }
   const found = findBalance(rig)
   if (found.choked) return { operatingPoint: null, reason: `choked:${found.choked.name}` }
   const ambientPa = rig.ambient.pressurePa
@@ -80,7 +82,7 @@ export function solvePrepared(rig: PreparedRig): OperatingPointResult {
  *
  * Inputs   rig and site (SI, pressures absolute)
  * Result   the point, balanced to 1e-8 of full-load delivery in a bracket of 1e-9; or null with the reason: air taken
- *          first is all there is, or the balance lies beyond a choked element
+ *          first is all there is, there is no nozzle, or the balance lies beyond a choked element
  * Errors   none for input in the declared ranges        Checked  tests/shared/airflow/laws.test.ts
  */
 export function solveOperatingPoint(rig: Rig, site: Site): OperatingPointResult {

@@ -65,6 +65,7 @@ export interface TargetTrial extends TargetResult {
  *
  * Inputs   rig, prepared · target Pa gauge, positive · are the figures of a target reached behind a choke wanted? (a
  *          search for the edge does without)
+ * Checked  tests/shared/airflow/laws.test.ts
  */
 export function requireTarget(rig: PreparedRig, targetGaugePa: number, wantsFigures = true): TargetTrial {
   const ambientPa = rig.ambient.pressurePa
@@ -214,7 +215,7 @@ function openAirLine(
 /** The check of a rig already prepared; see checkPressure. */
 export function checkPrepared(rig: PreparedRig, targetGaugePa: number): PressureCheck {
   const { operatingPoint, reason } = solvePrepared(rig)
-  if (reason === 'air-taken-first') {
+  if (reason === 'air-taken-first' || reason === 'no-nozzle') {
     return { verdict: 'cannot-run', operatingPoint, atTarget: null, reason, obstacle: 'air' }
   }
   const target = requireTarget(rig, targetGaugePa)
@@ -235,13 +236,13 @@ export function checkPrepared(rig: PreparedRig, targetGaugePa: number): Pressure
  *   Holds         air margin ≥ 5 %
  *   Barely holds  0 to 5 %
  *   Falls short   below 0, or at unload and above, or a regulator or a choked element in the way
- *   Can't run     air taken first is all that is delivered, or more
+ *   Can't run     air taken first is all that is delivered, or more; or there is no nozzle
  *
- * Inputs   rig and site (SI) · target nozzle pressure Pa absolute, above the site's pressure
+ * Inputs   rig and site (SI) · target nozzle pressure Pa absolute; below the site's it is taken as the site's
  * Result   verdict, the operating point, the state at the target and the reason when it is not reached
  * Errors   none for input in the declared ranges        Checked  tests/shared/airflow/laws.test.ts
  */
 export function checkPressure(rig: Rig, site: Site, targetNozzlePressurePa: number): PressureCheck {
   const prepared = prepareRig(rig, site)
-  return checkPrepared(prepared, targetNozzlePressurePa - prepared.ambient.pressurePa)
+  return checkPrepared(prepared, Math.max(0, targetNozzlePressurePa - prepared.ambient.pressurePa))
 }

@@ -37,7 +37,7 @@ function lossesOfLine(
  * The drops and the nozzle's gauge pressure add up to the compressor's; what a held regulator takes is one of them.
  *
  * Inputs   rig, prepared · its operating point · which outlet
- * Checked  tests/shared/airflow/pressureLosses.test.ts
+ * Checked  tests/shared/airflow/parts.test.ts
  */
 export function listPressureLosses(
   rig: PreparedRig,

@@ -8,7 +8,6 @@ import {
   maxNameLength,
   maxOutlets,
   minCurvePoints,
-  minOutlets,
   minUnloadAboveSetKpa,
   snapTo64ths,
 } from './limits.ts'
@@ -111,7 +110,7 @@ export const checkRequestSchema = z.strictObject({
   site: siteSchema,
   compressor: compressorSchema,
   airLine: z.array(elementSchema).max(maxElements),
-  outlets: z.array(outletSchema).min(minOutlets).max(maxOutlets),
+  outlets: z.array(outletSchema).max(maxOutlets),
   airTakenFirst: z.array(airDrawSchema).max(maxDraws),
   targetNozzlePressureKpa: within(checkLimits.targetNozzlePressureKpa),
   bitSet: bitSetNameSchema.optional(),

@@ -31,7 +31,6 @@ export const checkLimits = {
   targetNozzlePressureKpa: { min: 10, max: 3500 },
 } as const satisfies Record<string, Range>
 
-export const minOutlets = 1
 export const maxOutlets = 4
 /** in one line: the air line, or the line of one outlet */
 export const maxElements = 12
@@ -43,15 +42,5 @@ export const maxNameLength = 60
 /** an unload pressure at or beside the set pressure would make the delivery jump */
 export const minUnloadAboveSetKpa = 10
 
-/** half a thousandth, and what binary numbers add to it: 1.588 is 1/16 in, 1.5875 exactly */
-const snapToleranceMm = 0.0005 + 1e-9
-
-/**
- * A length typed or stored with few decimals is the 64th it stands for: 9.525 and 9.5254 mm are both 3/8 in.
- * Other lengths pass unchanged.
- */
-export function snapTo64ths(lengthMm: number): number {
-  // Whole numbers up to the one division: 25.4 is not exact in binary, and 24/64 in must be 9.525 itself.
-  const nearest = (Math.round((lengthMm * 640) / 254) * 254) / 640
-  return Math.abs(nearest - lengthMm) <= snapToleranceMm ? nearest : lengthMm
-}
+/** A nozzle's length in the contract is the 64th of an inch it stands for; one function for screens and API. */
+export { snapBoreMm as snapTo64ths } from '../units/quantities.ts'

@@ -214,8 +214,8 @@ export function mmOfInches(inches: number): number {
   return toBase(inch, inches)
 }
 
-/** Bores within this of a 64th of an inch, or of each other, are the same bore. */
-export const BORE_TOLERANCE_MM = 0.0005
+/** Bores within this of a 64th of an inch, or of each other, are the same bore; with what binary numbers add to it. */
+export const BORE_TOLERANCE_MM = 0.0005 + 1e-9
 
 const LARGEST_FRACTION_MM = 1000
 

@@ -16,7 +16,7 @@ const moves = 100
 /** Longer than the chart waits, shorter than the address does, which is written once the thumb rests. */
 const pauseMs = 220
 
-const work = new Set([
+const scriptAndLayout = new Set([
   'EventDispatch',
   'FunctionCall',
   'RunMicrotasks',
@@ -24,11 +24,11 @@ const work = new Set([
   'FireAnimationFrame',
   'UpdateLayoutTree',
   'Layout',
-  'PrePaint',
-  'Paint',
-  'Layerize',
-  'Commit',
 ])
+const painting = new Set(['PrePaint', 'Paint', 'Layerize', 'Commit'])
+
+const isScriptOrLayout = ({ name }: TraceEvent) => scriptAndLayout.has(name)
+const isWork = (event: TraceEvent) => isScriptOrLayout(event) || painting.has(event.name)
 
 /** The time covered by any of the events, nested ones counted once, ms. */
 function coveredMs(events: readonly TraceEvent[]): number {
@@ -86,10 +86,11 @@ export async function measureDrag(browser: Browser, address: string) {
     .sort((a, b) => a.ts - b.ts)
   const { pid, tid } = starts[0]!
   const events = trace.traceEvents
-    .filter((event) => event.pid === pid && event.tid === tid && event.ph === 'X' && work.has(event.name))
+    .filter((event) => event.pid === pid && event.tid === tid && event.ph === 'X' && isWork(event))
     .sort((a, b) => a.ts - b.ts)
 
   const answerTimes: number[] = []
+  const answerFrameTimes: number[] = []
   const panelTimes: number[] = []
   const chartDelays: number[] = []
   starts.forEach((start, index) => {
@@ -100,9 +101,11 @@ export async function measureDrag(browser: Browser, address: string) {
     const shown = own.find(({ name, ts }) => name === 'Paint' && ts > timer.ts + (timer.dur ?? 0))
     if (!shown) return
     const isOfPanels = ({ ts }: TraceEvent) => ts >= timer.ts && ts <= shown.ts
-    answerTimes.push(coveredMs(own.filter(({ ts }) => ts < timer.ts)))
-    panelTimes.push(coveredMs(own.filter(isOfPanels)))
+    const ofAnswer = own.filter(({ ts }) => ts < timer.ts)
+    answerTimes.push(coveredMs(ofAnswer.filter(isScriptOrLayout)))
+    answerFrameTimes.push(coveredMs(ofAnswer))
+    panelTimes.push(coveredMs(own.filter(isOfPanels).filter(isScriptOrLayout)))
     chartDelays.push((shown.ts + (shown.dur ?? 0) - start.ts) / 1000)
   })
-  return { slowdown, moves: answerTimes.length, answerTimes, panelTimes, chartDelays }
+  return { slowdown, moves: answerTimes.length, answerTimes, answerFrameTimes, panelTimes, chartDelays }
 }

@@ -114,6 +114,24 @@ test('what was typed is there again after a reload, unfinished fields too', asyn
   await expect(check.field('Bore now')).toHaveValue('seven sixteenths or so, from what I remember')
 })
 
+test('a tap on Settings right after a field is obeyed, and going back finds the check as it was left', async ({
+  check,
+  page,
+}) => {
+  await check.open()
+  await page.route(/SettingsView/, async (route) => {
+    await new Promise((resolve) => setTimeout(resolve, 600))
+    await route.continue()
+  })
+  await check.type('Bore now', '1/2')
+  await check.goTo('settings')
+  await expect(page.getByRole('heading', { level: 1 })).toHaveText('Settings')
+  await page.goBack()
+  await expect(check.field('Bore now')).toHaveValue('1/2')
+  await page.reload()
+  await expect(check.field('Bore now')).toHaveValue('1/2')
+})
+
 test('starting over brings the first rig back', async ({ check, page }) => {
   await check.open()
   const first = await check.pressure.textContent()

@@ -80,13 +80,18 @@ test('what cannot be is answered with a sentence that says what could', async ({
 
 test('a half-typed number is not scolded before there is a pause', async ({ check, page }) => {
   await check.open()
-  await check.field('Target at the nozzle').fill('')
-  await check.field('Target at the nozzle').pressSequentially('9 b')
+  await page.clock.install()
+  await page.clock.pauseAt(Date.now() + 60_000)
+  await check.field('Target at the nozzle').fill('9 b')
+  await page.clock.runFor(500)
   await expect(check.staleNote).toContainText('last whole answer')
   await expect(page.locator('.problem')).toHaveCount(0)
-  await check.field('Target at the nozzle').press('Backspace')
-  await check.field('Target at the nozzle').pressSequentially('bar')
+  await page.clock.runFor(500)
+  await expect(page.locator('.problem')).toHaveCount(1)
+  await check.field('Target at the nozzle').fill('9 bar')
+  await page.clock.runFor(100)
   await expect(check.staleNote).toBeEmpty()
+  await expect(page.locator('.problem')).toHaveCount(0)
 })
 
 test('a metric 1,250 is questioned and one tap settles it', async ({ check, page }) => {

@@ -22,13 +22,17 @@ export default defineConfig({
     browserName: 'chromium',
     locale: 'en-US',
     colorScheme: 'light',
-    trace: 'retain-on-failure',
+    trace: { mode: 'retain-on-failure', screenshots: false },
     launchOptions: { executablePath: findChromium(), args: chromiumArguments },
   },
   projects: [
     { name: 'phone', use: { viewport: { width: 390, height: 844 }, hasTouch: true, isMobile: true } },
     // What does not depend on the screen is tried on one of them.
-    { name: 'desk', use: { viewport: { width: 1440, height: 900 } }, testIgnore: /(links|width)\.spec\.ts/ },
+    {
+      name: 'desk',
+      use: { viewport: { width: 1440, height: 900 } },
+      testIgnore: /(links|themes|width)\.spec\.ts/,
+    },
   ],
   webServer: {
     command: 'node --import tsx server/index.ts',

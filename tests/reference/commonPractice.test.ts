@@ -1,13 +1,14 @@
 import { describe, expect, it } from 'vitest'
 import { checkPressure, nozzleMassFlow } from '#shared/airflow/index.ts'
 import type { Rig } from '#shared/airflow/index.ts'
+import { parseQuantity } from '#shared/units/parse.ts'
 import { KPA_PER_PSI, M3_PER_CUBIC_FOOT } from '#shared/units/quantities.ts'
 
 /* Common practice of the trade, no source. */
 const inch = 0.0254
 const psi = (value: number) => 101325 + value * KPA_PER_PSI * 1000
 const site = { altitudeM: 0, airTemperatureK: 293.15 }
-const bore = (number: number, sixteenthsWorn = 0) => ((number + sixteenthsWorn) * inch) / 16
+const bore = (number: number) => (number * inch) / 16
 
 /** 185 cfm set at 100 psi, short 1 1/4 in hoses with their couplings and a pot between. */
 function smallRig(number: number): Rig {
@@ -34,10 +35,14 @@ function smallRig(number: number): Rig {
 
 describe('common practice', () => {
   it('a No. 5 worn by one sixteenth draws as a No. 6', () => {
-    const draw = (boreM: number) => nozzleMassFlow({ boreM }, psi(100), site)
-    expect(draw(bore(5, 1))).toBe(draw(bore(6)))
+    const draw = (typed: string, wornMm = 0) => {
+      const read = parseQuantity('bore', typed, { system: 'us' })
+      return nozzleMassFlow({ boreM: ((read.ok ? read.value : NaN) + wornMm) / 1000 }, psi(100), site)
+    }
+    expect(draw('No. 5', 25.4 / 16)).toBeCloseTo(draw('#6'), 12)
+    expect(draw('#6')).toBeCloseTo(draw('3/8 in'), 12)
     // and that is 44 % more: bore by the square
-    expect(draw(bore(6)) / draw(bore(5))).toBeCloseTo(1.44, 10)
+    expect(draw('No. 6') / draw('No. 5')).toBeCloseTo(1.44, 10)
   })
 
   it('a 185 cfm compressor with a hose on it does not hold 50 psi at a No. 8', () => {

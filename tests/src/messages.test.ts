@@ -91,6 +91,7 @@ const expansions: Record<string, readonly string[]> = {
     'short-of-air': true,
     'above-unload': true,
     'air-taken-first': true,
+    'no-nozzle': true,
     'bore-range': true,
     choked: true,
     regulator: true,

@@ -23,6 +23,7 @@ export const common = {
   reasons: {
     'short-of-air': 'This nozzle draws more air than the compressor delivers at the pressure it takes.',
     'above-unload': 'The pressure this takes at the compressor is over the one at which it unloads.',
+    'no-nozzle': 'There is no nozzle on this rig.',
     'air-taken-first': 'Hoods and tools take all the air there is; nothing is left for the nozzle.',
     choked: 'The {element} is too narrow: this much air cannot pass it.',
     regulator: 'The regulator of outlet {number} is set too low for this pressure.',

@@ -24,6 +24,7 @@ export const common = {
     'short-of-air': 'La boquilla pide más aire del que da el compresor a la presión que hace falta.',
     'above-unload':
       'Haría falta en el compresor más presión que la de descarga: antes de llegar, se descarga.',
+    'no-nozzle': 'Este equipo no tiene boquilla.',
     'air-taken-first':
       'Las escafandras y herramientas se llevan todo el aire; a la boquilla no le queda nada.',
     choked: 'Por aquí no pasa tanto aire, es muy angosto: {element}.',

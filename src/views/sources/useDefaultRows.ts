@@ -1,3 +1,4 @@
+import { deratingFromM } from '#shared/airflow/cautions.ts'
 import { computed } from 'vue'
 import { HOOD_AIR, HOOD_DEFAULT_FREE_AIR_M3_MIN } from '#shared/catalogue/breathing.ts'
 import {
@@ -50,8 +51,7 @@ const exampleFreeAirM3Min = COMPRESSOR_CLASSES.find(({ ratedCfm }) => ratedCfm =
 const exampleKpa = 100 * KPA_PER_PSI
 const crushedGlass = ABRASIVES.find(({ id }) => id === 'crushed-glass')!.bulkDensityKgM3
 const silicaSand = ABRASIVES.find(({ id }) => id === 'silica-sand')!.bulkDensityKgM3
-/** Derating of the engine caution, from where on: metres above the sea. */
-const deratingM = { step: 100, natural: 305, turbo: 1000 }
+const deratingM = { step: 100, ...deratingFromM }
 
 const coolingKeys = {
   aftercooled: 'pages.sources.defaults.rows.aftercooled',

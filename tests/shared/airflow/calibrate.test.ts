@@ -99,6 +99,15 @@ describe('two gauges and a measured bore', () => {
     expect([found.conditionReason, found.lineReason]).toEqual(['regulator-acting', 'regulator-acting'])
   })
 
+  it('on a rig without any line leave a line factor that nothing could explain alone', () => {
+    const bare = { ...makeRig(1, 1), airLine: [], outlets: [{ line: [], nozzle: { boreM: bore } }] }
+    const found = calibrate(bare, site, {
+      ...readings,
+      compressorPressurePa: readings.nozzlePressurePa + 2e5,
+    })
+    expect([found.lineFactor, found.lineReason]).toEqual([null, 'out-of-range'])
+  })
+
   it('of a drop that the gauges can just tell, the range of the line begins at no loss', () => {
     const drop = readings.compressorPressurePa - readings.nozzlePressurePa
     const coarse = { ...readings, compressorAccuracyPa: drop * 0.6, nozzleAccuracyPa: drop * 0.6 }

@@ -24,6 +24,8 @@ import { anyChecks, checkBodies, seed } from './randomChecks.ts'
 let rigsDrawn = 0
 
 /** Looks at so many random rigs; returns how many the law had something to say about. */
+const rigsALaw = 20_000
+
 function everyRig(
   numRuns: number,
   bodies: fc.Arbitrary<CheckRequest>,
@@ -110,11 +112,21 @@ function expectNear(a: number, b: number, part: number) {
 describe('laws of every rig', () => {
   it('the verdict agrees with the operating point, and with its own margin', () => {
     const verdicts = new Map<string, number>()
-    everyRig(20_000, anyChecks, ({ rig, site, targetPa }) => {
+    everyRig(rigsALaw, anyChecks, ({ rig, site, targetPa }) => {
       const { verdict, operatingPoint, atTarget, reason } = checkPressure(rig, site, targetPa)
       verdicts.set(verdict, (verdicts.get(verdict) ?? 0) + 1)
       const isReached = verdict === 'holds' || verdict === 'barely-holds'
       expect(reason === null).toBe(isReached)
+      if (isReached && !operatingPoint) {
+        // the balance lies beyond a choke, but at the target itself every outlet's line is open
+        for (const { line, nozzle } of rig.outlets) {
+          const flow = nozzleMassFlow(nozzle, targetPa, {
+            ...site,
+            airTemperatureK: lineTemperature(rig, site),
+          })
+          expect(marchByHand(line, lineTemperature(rig, site), flow, targetPa)).not.toBeNaN()
+        }
+      }
       if (operatingPoint && isReached) expect(lowestOf(operatingPoint)).toBeGreaterThan(targetPa * (1 - 1e-8))
       if (operatingPoint && !isReached) expect(lowestOf(operatingPoint)).toBeLessThan(targetPa * (1 + 1e-8))
       const ambient = resolveAmbient(site)
@@ -138,7 +150,7 @@ describe('laws of every rig', () => {
   })
 
   it('flow balances to 1e-8 of full-load delivery', () => {
-    const spoken = everyRig(5_000, anyChecks, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks, ({ rig, site }) => {
       const { operatingPoint: point } = solveOperatingPoint(rig, site)
       if (!point) return false
       const { dryAirDensity } = resolveAmbient(site)
@@ -156,7 +168,7 @@ describe('laws of every rig', () => {
 
   it('solved both ways agrees: from the nozzles back to the compressor, and from the compressor down', () => {
     let downward = 0
-    const spoken = everyRig(4_000, anyChecks, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks, ({ rig, site }) => {
       const { operatingPoint: point } = solveOperatingPoint(rig, site)
       if (!point) return false
       const temperature = lineTemperature(rig, site)
@@ -193,7 +205,7 @@ describe('laws of every rig', () => {
   })
 
   it('every element meets its equation from either end', () => {
-    everyRig(2_000, checkBodies('declared'), ({ rig, site }) => {
+    everyRig(rigsALaw, checkBodies('declared'), ({ rig, site }) => {
       const temperature = lineTemperature(rig, site)
       const [given] = rig.airLine
       if (!given) return false
@@ -209,7 +221,7 @@ describe('laws of every rig', () => {
 
   it('more bore never raises any nozzle pressure', () => {
     let index = 0
-    const spoken = everyRig(4_000, anyChecks, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks, ({ rig, site }) => {
       const before = solveOperatingPoint(rig, site).operatingPoint
       const which = index++ % rig.outlets.length
       const { boreM } = rig.outlets[which]!.nozzle
@@ -224,7 +236,7 @@ describe('laws of every rig', () => {
 
   it('more air taken first never raises any nozzle pressure', () => {
     let index = 0
-    const spoken = everyRig(4_000, anyChecks, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks, ({ rig, site }) => {
       const before = solveOperatingPoint(rig, site).operatingPoint
       const more = { name: 'one more', freeAirM3S: (index++ % 5) * 0.004 + 1e-6 }
       const after = solveOperatingPoint(
@@ -238,7 +250,7 @@ describe('laws of every rig', () => {
 
   it('more hose on an outlet never raises its own pressure', () => {
     let index = 0
-    const spoken = everyRig(4_000, anyChecks, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks, ({ rig, site }) => {
       const which = index++ % rig.outlets.length
       const outlet = rig.outlets[which]!
       const hose = { insideDiameterM: 0.01 + (index % 4) * 0.01, lengthM: index % 40, lossK: index % 3 }
@@ -263,7 +275,7 @@ describe('laws of every rig', () => {
       const nozzle = { ...outlet!.nozzle, boreMm: outlet!.nozzle.boreMm * 1.8 }
       return { ...rest, outlets: [{ ...outlet!, nozzle }] }
     })
-    const spoken = everyRig(6_000, flat, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, flat, ({ rig, site }) => {
       if (typeof rig.compressor.freeAir !== 'number') return false
       const climb = 1 + (index++ % 9) * 250
       const { setPressurePa } = rig.compressor
@@ -291,7 +303,7 @@ describe('laws of every rig', () => {
 
   it('two identical outlets on empty lines are one of twice the area, and so with fittings of twice the area', () => {
     let empty = 0
-    const spoken = everyRig(4_000, anyChecks.map(oneOutlet), ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, anyChecks.map(oneOutlet), ({ rig, site }) => {
       const { line, ...outlet } = rig.outlets[0]!
       // only K scales with area: friction would not
       const fittings = line.map(({ insideDiameterM, lossK = 0 }) => ({ insideDiameterM, lossK }))
@@ -321,7 +333,7 @@ describe('laws of every rig', () => {
   it('an element without any loss chokes like one with K = 1e-9', () => {
     let index = 0
     let choked = 0
-    everyRig(4_000, anyChecks.map(oneOutlet), ({ rig, site }) => {
+    everyRig(rigsALaw, anyChecks.map(oneOutlet), ({ rig, site }) => {
       const outlet = rig.outlets[0]!
       const insideDiameterM = outlet.nozzle.boreM * (0.6 + (index++ % 16) / 20)
       const withLoss = (lossK: number): Rig => ({
@@ -346,7 +358,7 @@ describe('laws of every rig', () => {
 
   it('the limit bore is where the target is just met', () => {
     const limits = new Map<string, number>()
-    everyRig(4_000, anyChecks, ({ rig, site, targetPa }) => {
+    everyRig(rigsALaw, anyChecks, ({ rig, site, targetPa }) => {
       rig.outlets.forEach((outlet, index) => {
         const limit = limitBore(rig, site, targetPa, index)
         const kind = `${limit.limitedBy} ${limit.boreM === null ? 'none' : 'some'}`
@@ -394,7 +406,7 @@ describe('laws of every rig', () => {
       outlets: body.outlets.map((outlet) => ({ ...outlet, line: [] })),
       airLine: [{ insideDiameterMm: Math.max(3, body.outlets[0]!.nozzle.boreMm * 0.6) }],
     }))
-    const spoken = everyRig(3_000, narrow, ({ rig, site }) => {
+    const spoken = everyRig(rigsALaw, narrow, ({ rig, site }) => {
       const { reason } = solveOperatingPoint(rig, site)
       if (!reason?.startsWith('choked:')) return false
       const temperature = lineTemperature(rig, site)

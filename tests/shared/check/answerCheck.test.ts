@@ -1,6 +1,5 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { resolveAmbient } from '#shared/airflow/index.ts'
 import { answerCheck, bitsFor } from '#shared/check/answerCheck.ts'
 import { cautionSentences, sentenceOfCaution } from '#shared/check/cautionSentences.ts'
 import { questionOfCheck } from '#shared/check/rigOfCheck.ts'
@@ -135,8 +134,25 @@ describe('an answer', () => {
     })
   })
 
+  it('to a rig without a nozzle is that it cannot run', () => {
+    const request = checkRequestSchema.parse(makeCheckRequest({ outlets: [] }))
+    expect(answerCheck(request)).toMatchObject({
+      verdict: 'cannot-run',
+      reason: 'no-nozzle',
+      operatingPoint: null,
+      atTarget: null,
+      outlets: [],
+    })
+  })
+
+  it('to a pot in the outlet’s line that the target would choke names the pot', () => {
+    const pot = { name: 'pot', insideDiameterMm: 10, lossK: 8 }
+    const outlets = [{ line: [pot], nozzle: { boreMm: 14 } }]
+    const answer = answerCheck(makeCheckRequest({ outlets, targetNozzlePressureKpa: 400 }))
+    expect(answer).toMatchObject({ verdict: 'falls-short', reason: 'choked:pot', atTarget: null })
+  })
+
   it('to any body the contract lets through keeps the contract, with finite numbers alone', () => {
-    let answers = 0
     const bodies = fc.oneof(
       checkBodies('declared', { withJumps: true }),
       checkBodies('declared', { withJumps: true }),
@@ -149,13 +165,9 @@ describe('an answer', () => {
         // a number that is not finite does not survive JSON
         expect(JSON.parse(JSON.stringify(answer))).toEqual(answer)
         expect(answer.outlets).toHaveLength(request.outlets.length)
-        const ambient = resolveAmbient(questionOfCheck(request).site)
-        expect(answer.operatingPoint === null || ambient.dryAirDensity > 0).toBe(true)
-        answers++
       }),
       { seed, numRuns: 6_000 },
     )
-    expect(answers).toBe(6_000)
   })
 
   it('to a curve that falls off a cliff between two numbers next to each other is still an answer', () => {
