@@ -22,6 +22,11 @@ export interface AirCurve {
   end: Reason | null
 }
 
+export interface DeliveryCurve extends AirCurve {
+  /** does the curve end where the other outlets take all that is delivered */
+  isTakenByOthers: boolean
+}
+
 export interface DrawCurve extends AirCurve {
   boreM: number
   /** with this bore, at the target */
@@ -32,13 +37,15 @@ export interface DrawCurve extends AirCurve {
 export interface DeliveryAndDraw {
   lowestGaugePa: number
   highestGaugePa: number
-  delivery: AirCurve
+  delivery: DeliveryCurve
   draws: DrawCurve[]
 }
 
 const stepsOfDelivery = 32
 const stepsOfFall = 16
 const stepsOfDraw = 24
+/** halvings between two points of the delivery, down to under 1 Pa */
+const stepsToEnd = 20
 
 /** Gauge pressure before an outlet's line when its nozzle passes this flow; NaN when an element is choked. */
 function gaugeBeforeOutlet({ line, nozzle }: PreparedOutlet, massFlow: number): number {
@@ -91,31 +98,58 @@ function deliveryPressures(rig: PreparedRig): number[] {
  * The nozzle's bore does not enter, so every draw meets this curve exactly at its operating point.
  *
  * Inputs   rig, prepared · which outlet
- * Result   points of rising nozzle pressure; end names the element that is choked below the first of them
+ * Result   points of rising nozzle pressure; end names the element that is choked below the first of them; with several
+ *          outlets the last is where the others take all
  * Checked  tests/shared/airflow/drawCurves.test.ts
  */
-export function traceDelivery(rig: PreparedRig, outletIndex: number): AirCurve {
+export function traceDelivery(rig: PreparedRig, outletIndex: number): DeliveryCurve {
   const { ambient, delivery, firstMassFlow } = rig
   const outlet = rig.outlets[outletIndex]!
-  const points: AirPoint[] = []
-  let end: Reason | null = null
-  for (const pressurePa of deliveryPressures(rig)) {
+  const arrivalAt = (pressurePa: number) => {
     const total = Math.max(0, deliveryAt(delivery, pressurePa) - firstMassFlow)
     const gauge = pressurePa - ambient.pressurePa
     const manifold = gaugeAfterLine(rig.airLine, total, gauge, ambient.pressurePa)
     const own = total - (manifold > 0 ? drawOfOthers(rig, outletIndex, manifold) : 0)
-    if (own < 0) break
     const feed = Math.min(manifold, outlet.regulatorGaugePa)
-    const nozzleGaugePa = gaugeAfterLine(outlet.line, own, feed, ambient.pressurePa)
-    if (nozzleGaugePa >= 0) {
-      points.push({ nozzleGaugePa, freeAirM3S: (total + firstMassFlow) / ambient.dryAirDensity })
-    } else if (Number.isNaN(nozzleGaugePa)) {
-      end =
-        chokedForwards(rig.airLine, total, gauge, ambient.pressurePa) ??
-        chokedForwards(outlet.line, own, feed, ambient.pressurePa)
-    }
+    const nozzleGaugePa = own < 0 ? NaN : gaugeAfterLine(outlet.line, own, feed, ambient.pressurePa)
+    return { total, gauge, own, feed, nozzleGaugePa }
   }
-  return { points, end }
+  const pointOf = ({ nozzleGaugePa, total }: { nozzleGaugePa: number; total: number }): AirPoint => ({
+    nozzleGaugePa,
+    freeAirM3S: (total + firstMassFlow) / ambient.dryAirDensity,
+  })
+  const points: AirPoint[] = []
+  let end: Reason | null = null
+  let earlierPa = ambient.pressurePa
+  for (const pressurePa of deliveryPressures(rig)) {
+    const arrival = arrivalAt(pressurePa)
+    if (arrival.own < 0) {
+      const last = lastBefore(earlierPa, pressurePa, (pressure) => arrivalAt(pressure).own >= 0)
+      const lastArrival = arrivalAt(last)
+      if (last > earlierPa && lastArrival.nozzleGaugePa >= 0) points.push(pointOf(lastArrival))
+      return { points, end, isTakenByOthers: true }
+    }
+    if (arrival.nozzleGaugePa >= 0) {
+      points.push(pointOf(arrival))
+    } else if (Number.isNaN(arrival.nozzleGaugePa)) {
+      end =
+        chokedForwards(rig.airLine, arrival.total, arrival.gauge, ambient.pressurePa) ??
+        chokedForwards(outlet.line, arrival.own, arrival.feed, ambient.pressurePa)
+    }
+    earlierPa = pressurePa
+  }
+  return { points, end, isTakenByOthers: false }
+}
+
+/** The highest value between two at which something still is so, by halving. */
+function lastBefore(low: number, high: number, isSo: (value: number) => boolean): number {
+  let [yes, no] = [low, high]
+  for (let step = 0; step < stepsToEnd; step++) {
+    const middle = (yes + no) / 2
+    if (isSo(middle)) yes = middle
+    else no = middle
+  }
+  return yes
 }
 
 /** The first element that a march from the compressor cannot pass. */
@@ -179,8 +213,17 @@ export function traceDraw(
   return { points, end: null }
 }
 
+/** The nozzle pressures between which there is a delivery; 0 and Infinity where there is none. */
+function reachOf({ points }: AirCurve) {
+  return {
+    firstGaugePa: points[0]?.nozzleGaugePa ?? 0,
+    lastGaugePa: points[points.length - 1]?.nozzleGaugePa ?? Infinity,
+  }
+}
+
 /**
- * Delivery and draw over one nozzle's pressure, in a range that shows the target and every operating point.
+ * Delivery and draw over one nozzle's pressure, in a range that shows the target, the delivery and
+ * every operating point.
  *
  * Inputs   rig, prepared · which outlet · bores m · target Pa gauge
  * Result   the delivery, and a draw with its operating point for each bore
@@ -203,12 +246,23 @@ export function traceDeliveryAndDraw(
       },
   )
   const gauges = operatingPoints.flatMap((point) => (point ? [point.nozzleGaugePa] : []))
-  const lowestGaugePa = Math.min(0.55 * targetGaugePa, ...gauges.map((gauge) => 0.85 * gauge))
-  const highestGaugePa = Math.max(1.2 * targetGaugePa, ...gauges.map((gauge) => 1.06 * gauge))
+  const delivery = traceDelivery(rig, outletIndex)
+  const { firstGaugePa, lastGaugePa } = reachOf(delivery)
+  const lowestGaugePa = Math.min(
+    0.55 * targetGaugePa,
+    0.85 * lastGaugePa,
+    ...gauges.map((gauge) => 0.85 * gauge),
+  )
+  const highestGaugePa = Math.max(
+    1.2 * targetGaugePa,
+    // where the line chokes at lower pressures the delivery begins above them all
+    Math.min(lastGaugePa, 1.2 * firstGaugePa),
+    ...gauges.map((gauge) => 1.06 * gauge),
+  )
   return {
     lowestGaugePa,
     highestGaugePa,
-    delivery: traceDelivery(rig, outletIndex),
+    delivery,
     draws: boresM.map((boreM, index) => ({
       boreM,
       verdict: checks[index]!.verdict,

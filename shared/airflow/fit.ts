@@ -1,12 +1,13 @@
 import { engineShortfall } from './cautions.ts'
 import { solveOperatingPoint } from './operatingPoint.ts'
-import type { OperatingPointResult } from './operatingPoint.ts'
+import type { OperatingPointResult, Reason } from './operatingPoint.ts'
 import { checkPrepared } from './pressureCheck.ts'
 import type { PressureCheck, Verdict } from './pressureCheck.ts'
 import { prepareRig } from './preparedRig.ts'
 import type { Compressor, Rig, Site } from './rig.ts'
 
 const sixteenthM = 0.0254 / 16
+const sameBoreM = 0.5e-6
 
 /** The rig with another nozzle bore at one outlet. */
 export function withBore(rig: Rig, outletIndex: number, boreM: number): Rig {
@@ -67,13 +68,23 @@ export interface FittingNozzle {
   check: PressureCheck
   /** the same nozzle one sixteenth worn */
   wornCheck: PressureCheck
+  /** worn so far it is wider than a hose of its own line, and counts no more */
+  isWornWiderThanLine: boolean
+}
+
+export interface LargestNozzles {
+  whenNew: FittingNozzle | null
+  whenWorn: FittingNozzle | null
+  /** what stops even the smallest number; null where one fits */
+  obstacle: Reason | 'wider-than-line' | null
 }
 
 /**
  * The largest nozzle number that reaches the target new, and the largest that still does one sixteenth worn.
  *
  * Inputs   rig, site · target Pa gauge · which outlet · numbers from small to large
- * Result   null where even the smallest does not reach it
+ * Result   as the limit bore, none is wider than the narrowest of the outlet's own line; null where even the smallest
+ *          does not reach the target, with what stops it
  * Checked  tests/shared/airflow/fit.test.ts
  */
 export function findLargestNozzles(
@@ -82,19 +93,27 @@ export function findLargestNozzles(
   targetGaugePa: number,
   outletIndex: number,
   numbers: readonly number[],
-): { whenNew: FittingNozzle | null; whenWorn: FittingNozzle | null } {
+): LargestNozzles {
+  const diameters = rig.outlets[outletIndex]!.line.map(({ insideDiameterM }) => insideDiameterM)
+  const isWiderThanLine = (sixteenths: number) => sixteenths * sixteenthM > Math.min(...diameters) + sameBoreM
+  const at = (sixteenths: number) =>
+    checkGauge(withBore(rig, outletIndex, sixteenths * sixteenthM), site, targetGaugePa)
   let whenNew: FittingNozzle | null = null
   let whenWorn: FittingNozzle | null = null
   for (const number of numbers) {
-    const at = (sixteenths: number) =>
-      checkGauge(withBore(rig, outletIndex, sixteenths * sixteenthM), site, targetGaugePa)
     const check = at(number)
-    if (!isReached(check.verdict)) break
+    const obstacle = isReached(check.verdict)
+      ? isWiderThanLine(number)
+        ? 'wider-than-line'
+        : null
+      : check.reason
+    if (obstacle) return { whenNew, whenWorn, obstacle: whenNew ? null : obstacle }
     const wornCheck = at(number + 1)
-    whenNew = { number, check, wornCheck }
-    if (isReached(wornCheck.verdict)) whenWorn = whenNew
+    const isWornWiderThanLine = isWiderThanLine(number + 1)
+    whenNew = { number, check, wornCheck, isWornWiderThanLine }
+    if (isReached(wornCheck.verdict) && !isWornWiderThanLine) whenWorn = whenNew
   }
-  return { whenNew, whenWorn }
+  return { whenNew, whenWorn, obstacle: null }
 }
 
 /**

@@ -1,5 +1,6 @@
 import type { AbrasiveId } from '../catalogue/media.ts'
 import type { BitSetName } from '../contracts/check.ts'
+import { maxDraws } from '../contracts/limits.ts'
 import type { UnitSystem } from '../units/quantities.ts'
 
 /** What a person typed, and under which units: shown back as typed, never converted in place. */
@@ -13,6 +14,9 @@ export type EngineChoice = 'unknown' | 'natural' | 'turbo'
 export type MediaLoading = 'clean' | 'lean' | 'normal' | 'heavy-or-wet'
 export type NozzleShape = 'venturi' | 'straight'
 export type BitChoice = BitSetName
+
+/** with the tools beside them no more than a check takes */
+export const mostHoods = maxDraws - 1
 
 export interface CurvePointForm {
   pressure: TypedText

@@ -1,7 +1,7 @@
 import { ABRASIVES } from '../catalogue/media.ts'
 import { BIT_SETS } from '../catalogue/drillBits.ts'
-import { maxCurvePoints, maxDraws, maxOutlets } from '../contracts/limits.ts'
-import { createCheckForm, createOutlet } from './checkForm.ts'
+import { maxCurvePoints, maxOutlets } from '../contracts/limits.ts'
+import { createCheckForm, createOutlet, mostHoods } from './checkForm.ts'
 import type { CheckForm, CurvePointForm, OutletForm } from './checkForm.ts'
 
 /** The first mark of an address that holds a check; a later shape of the form takes the next number. */
@@ -11,8 +11,6 @@ const longestFragment = 40_000
 /** what a field lets a person type, too long for a quantity or not */
 const longestText = 60
 const mostPieces = 20
-/** with the tools beside them no more than a check takes */
-const mostHoods = maxDraws - 1
 
 type Json = null | boolean | number | string | Json[] | { [key: string]: Json }
 

@@ -67,7 +67,12 @@ export function useFieldWords() {
   function problemSentence(field: FieldName, problem: FieldProblem): string {
     const [kind] = fieldKinds[field]
     const key = `fields.problems.${problem.problem}`
-    const limit = (value: number) => quantity(kind, value, limitDigits[kind]?.[system.value])
+    /** As many digits as keep a limit from being printed as nothing. */
+    const limit = (value: number) => {
+      const digits = limitDigits[kind]?.[system.value]
+      const isSmall = value > 0 && digits !== undefined && value < 1
+      return quantity(kind, value, isSmall ? digits + 2 : digits)
+    }
     switch (problem.problem) {
       case 'out-of-range':
         return t(key, { min: limit(problem.detail.min), max: limit(problem.detail.max) })

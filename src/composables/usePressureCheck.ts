@@ -1,27 +1,25 @@
-import { computed, shallowRef, watch } from 'vue'
+import { storeToRefs } from 'pinia'
+import { computed, watch } from 'vue'
 import { answerCheck } from '#shared/check/answerCheck.ts'
 import { questionOfCheck } from '#shared/check/rigOfCheck.ts'
-import type { CheckQuestion } from '#shared/check/rigOfCheck.ts'
-import type { CheckAnswer, CheckRequest } from '#shared/contracts/check.ts'
+import type { CheckRequest } from '#shared/contracts/check.ts'
 import { readForm } from '#shared/form/readForm.ts'
 import type { CheckForm } from '#shared/form/checkForm.ts'
+import { usePressureCheckStore } from '../stores/pressureCheck.ts'
+import type { AnsweredCheck } from '../stores/pressureCheck.ts'
 import { otherUnit, loadOtherUnits } from './otherUnits.ts'
-
-/** One answered check: what was asked in the contract's units and in SI, and the answer. */
-export interface AnsweredCheck {
-  request: CheckRequest
-  question: CheckQuestion
-  answer: CheckAnswer
-}
 
 export function answerRequest(request: CheckRequest): AnsweredCheck {
   return { request, question: questionOfCheck(request), answer: answerCheck(request) }
 }
 
-/** The answer to a form while it is typed: the last whole one stays, stale, until the fields can be read again. */
+/**
+ * The answer to a form while it is typed: the last whole one stays, stale, until the fields can be read again, over a
+ * visit to another page too.
+ */
 export function usePressureCheck(form: () => CheckForm) {
   const read = computed(() => readForm(form(), otherUnit.value))
-  const answered = shallowRef<AnsweredCheck | null>(null)
+  const { lastAnswered: answered } = storeToRefs(usePressureCheckStore())
   const isStale = computed(() => read.value.request === null)
   watch(
     read,
@@ -33,3 +31,5 @@ export function usePressureCheck(form: () => CheckForm) {
   )
   return { read, answered, isStale }
 }
+
+export type { AnsweredCheck }

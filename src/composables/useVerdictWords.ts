@@ -18,21 +18,29 @@ export function useVerdictWords(check: () => AnsweredCheck) {
     return outlets ? Math.min(...outlets.map((outlet) => outlet.nozzlePressureKpa)) : null
   })
 
-  /** Rounded as gauges are read; more digits where rounding would hide that it is under the target. */
-  const headline = computed(() => {
+  /** Rounded as gauges are read; more digits where rounding would hide on which side of the target it is. */
+  const digits = computed(() => {
+    const usual = system.value === 'us' ? 0 : 1
     const pressureKpa = lowestKpa.value
-    if (pressureKpa === null) return null
     const { answer, request } = check()
-    let digits = system.value === 'us' ? 0 : 1
-    const shown = (kpa: number) => parts('pressure', kpa, digits)
-    const hidesSide = () => shown(pressureKpa).number === shown(request.targetNozzlePressureKpa).number
-    if (answer.verdict === 'falls-short') for (; digits < 4 && hidesSide(); digits++);
-    return shown(pressureKpa)
+    if (pressureKpa === null || answer.verdict !== 'falls-short') return usual
+    const number = (kpa: number, count: number) =>
+      Number(parts('pressure', kpa, count).number.replace(/,/g, ''))
+    const hidesSide = (count: number) =>
+      number(pressureKpa, count) >= number(request.targetNozzlePressureKpa, count)
+    let count = usual
+    while (count < 4 && hidesSide(count)) count++
+    return count
   })
+  const headline = computed(() =>
+    lowestKpa.value === null ? null : parts('pressure', lowestKpa.value, digits.value),
+  )
+  const target = computed(() => quantity('pressure', check().request.targetNozzlePressureKpa, digits.value))
 
   const margin = computed(() => {
     const { answer, request } = check()
-    if (!answer.atTarget) return null
+    // over unload nothing is delivered: a share of nothing says less than the reason does
+    if (!answer.atTarget || answer.reason === 'above-unload') return null
     const { airMarginPct, requiredFreeAirM3Min, deliveredFreeAirM3Min } = answer.atTarget
     const share = formatPercent(airMarginPct)
     const key = request.airTakenFirst.length > 0 ? 'check.needsFirst' : 'check.needs'
@@ -46,5 +54,5 @@ export function useVerdictWords(check: () => AnsweredCheck) {
     }
   })
 
-  return { headline, margin }
+  return { headline, target, margin }
 }

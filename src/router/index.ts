@@ -2,6 +2,14 @@ import { createRouter } from 'vue-router'
 import type { RouterHistory } from 'vue-router'
 import PressureCheckView from '../views/check/PressureCheckView.vue'
 
+const SettingsView = () => import('../views/settings/SettingsView.vue')
+const SourcesView = () => import('../views/sources/SourcesView.vue')
+
+/** Fetches the pages ahead of a visit to them. */
+export function fetchPages(): Promise<unknown>[] {
+  return [SettingsView(), SourcesView()]
+}
+
 /** The check is in the first script, since it is what a visitor came for; every other page is fetched when opened. */
 export function createPages(history: RouterHistory) {
   return createRouter({
@@ -11,9 +19,9 @@ export function createPages(history: RouterHistory) {
       {
         path: '/settings',
         name: 'settings',
-        component: () => import('../views/settings/SettingsView.vue'),
+        component: SettingsView,
       },
-      { path: '/sources', name: 'sources', component: () => import('../views/sources/SourcesView.vue') },
+      { path: '/sources', name: 'sources', component: SourcesView },
       {
         path: '/:path(.*)*',
         name: 'not-found',

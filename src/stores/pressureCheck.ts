@@ -1,10 +1,19 @@
 import { defineStore } from 'pinia'
-import { computed, ref } from 'vue'
+import { computed, ref, shallowRef } from 'vue'
+import type { CheckQuestion } from '#shared/check/rigOfCheck.ts'
+import type { CheckAnswer, CheckRequest } from '#shared/contracts/check.ts'
 import { createCheckForm } from '#shared/form/checkForm.ts'
 import { readFragment, writeFragment } from '#shared/form/fragment.ts'
 import { toTypedText } from '#shared/units/format.ts'
 import { sixtyFourthsOf, snapBoreMm } from '#shared/units/quantities.ts'
 import type { UnitSystem } from '#shared/units/quantities.ts'
+
+/** One answered check: what was asked in the contract's units and in SI, and the answer. */
+export interface AnsweredCheck {
+  request: CheckRequest
+  question: CheckQuestion
+  answer: CheckAnswer
+}
 
 /** A dragged bore is a 64th or a tenth of a millimetre; sums of steps carry crumbs that nobody would type. */
 function roundBore(boreMm: number): number {
@@ -14,6 +23,7 @@ function roundBore(boreMm: number): number {
 /** The check on the screen, as typed; it lives in the address's fragment. */
 export const usePressureCheckStore = defineStore('pressureCheck', () => {
   const form = ref(createCheckForm())
+  const lastAnswered = shallowRef<AnsweredCheck | null>(null)
   const isLinkBroken = ref(false)
   const leftFragment = ref<string | null>(null)
   const canUndo = computed(() => leftFragment.value !== null && fragment() === '')
@@ -25,6 +35,8 @@ export const usePressureCheckStore = defineStore('pressureCheck', () => {
 
   function open(said: string) {
     const read = readFragment(said)
+    // another check: what was answered before is no longer its last answer
+    lastAnswered.value = null
     form.value = read.form
     isLinkBroken.value = read.isBroken
     isOpen = true
@@ -43,7 +55,7 @@ export const usePressureCheckStore = defineStore('pressureCheck', () => {
 
   /** A clean check; the one left can be had back until something is typed into the new one. */
   function startOver() {
-    leftFragment.value = writeFragment(form.value)
+    leftFragment.value = fragment() || null
     open('')
   }
 
@@ -54,6 +66,7 @@ export const usePressureCheckStore = defineStore('pressureCheck', () => {
 
   return {
     form,
+    lastAnswered,
     isLinkBroken,
     open,
     resume,

@@ -108,7 +108,7 @@ describe('the description of the API', () => {
     const wrong = [
       { ...good, colour: 'red' },
       { ...good, airLine: undefined },
-      { ...good, outlets: [] },
+      { ...good, outlets: null },
       { ...good, bitSet: null },
       makeCheckRequest({ site: { altitudeM: 5001, airTemperatureC: 20 } }),
       makeCheckRequest({ outlets: [{ line: [], nozzle: { boreMm: 61 } }] }),

@@ -185,9 +185,10 @@ describe('a check with wrong fields', () => {
     expect(response.status).toBe(200)
   })
 
-  it('wants at least one outlet and at most four', async () => {
+  it('takes no outlet as a rig that cannot run, and at most four', async () => {
     const outlet = { line: [], nozzle: { boreMm: 6.35 } }
-    expect(await refusedFields(makeCheckRequest({ outlets: [] }))).toEqual(['too-few /outlets'])
+    const answer = await (await postCheck(server.address, makeCheckRequest({ outlets: [] }))).json()
+    expect(answer).toMatchObject({ verdict: 'cannot-run', reason: 'no-nozzle', outlets: [] })
     expect(await refusedFields(makeCheckRequest({ outlets: Array(5).fill(outlet) }))).toEqual([
       'too-many /outlets',
     ])

@@ -56,7 +56,7 @@ const unitSystems = namesOf<UnitSystem>({ us: true, metric: true })
 
 /** What stands for the variable part of a key, by the key as it is written in the source. */
 const expansions: Record<string, readonly string[]> = {
-  'bits.sets.${set}': BIT_SETS,
+  "bits.sets.${set.replace('.', '_')}": BIT_SETS.map((set) => set.replace('.', '_')),
   'check.${outcome}': ['shared', 'shareFailed'],
   'elements.${base}': ['air-line', 'pot', 'blast-hose', 'whip', 'regulator'],
   'fields.compressor.coolings.${compressor.value.cooling}': coolings,

@@ -21,12 +21,12 @@ export const common = {
     regulator: 'regulator',
   },
   reasons: {
-    'short-of-air': 'This nozzle draws more air than the compressor delivers at the pressure it takes.',
+    'short-of-air': 'This takes more air than the compressor delivers at the pressure it needs.',
     'above-unload': 'The pressure this takes at the compressor is over the one at which it unloads.',
     'no-nozzle': 'There is no nozzle on this rig.',
     'air-taken-first': 'Hoods and tools take all the air there is; nothing is left for the nozzle.',
     choked: 'The {element} is too narrow: this much air cannot pass it.',
-    regulator: 'The regulator of outlet {number} is set too low for this pressure.',
+    regulator: 'The regulator of nozzle {number} is set too low for this pressure.',
     'bore-range': 'It holds at every bore up to 60 mm (2 3/8 in).',
   },
   check: {
@@ -40,6 +40,9 @@ export const common = {
     needs: 'needs {needed} of the {delivered} it delivers at {pressure}',
     needsFirst: 'needs {needed} of the {delivered} it delivers at {pressure}, breathing air and tools first',
     noPressure: 'no steady pressure',
+    unfinished: 'No verdict yet',
+    unfinishedFields:
+      'One field below has to be finished first. | {count} fields below have to be finished first.',
     stale: 'The last whole answer; a field is not finished.',
     brokenLink: 'That link held no check that can be read, so this is a clean one.',
     share: 'Copy link',
@@ -51,13 +54,15 @@ export const common = {
       'Guidance, not permission: the manuals of the machines, local codes and a competent person decide.',
   },
   ruler: {
-    label:
-      'Bore ruler: new {newBore}, now {nowBore}, limit {limit}. At the limit bore this rig just reaches the target.',
+    label: 'Bore ruler: new {newBore}, now {nowBore}, limit {limit}.',
+    reaches: 'At the limit bore this rig just reaches the target.',
     labelNoLimit: 'Bore ruler: new {newBore}, now {nowBore}. No bore reaches the target.',
     handle: 'Bore now: drag it, or step it with the arrow keys',
     new: 'new',
     now: 'now',
     limit: 'limit',
+    limitAt: 'limit {bore}',
+    limitOver: 'limit over {bore}',
     uncertainty: '±4 %',
     limitedBy: {
       line: 'The limit here is the hose: no bore wider than its own line counts.',
@@ -71,7 +76,11 @@ export const common = {
     orderText: 'If {bit} goes all the way through, order the next nozzle.',
     noGoText: 'If {bit} goes all the way through, stop using this nozzle at {target}.',
     noWarningBit: 'A new {nozzle} already passes {bit}: no warning bit here, order now.',
-    noWarning: 'A new {nozzle} is past every bit under the limit: no warning bit here, order now.',
+    noWarning: 'No bit of this set is small enough to warn here: measure with a gauge.',
+    noHelpRig: 'No bit helps: this rig cannot hold a new {nozzle} at {target}.',
+    noHelpOthers:
+      'No bit helps: with the other nozzles as they are, this rig cannot hold a new {nozzle} at {target}.',
+    noHelpLine: 'No bit helps: a new {nozzle} is wider than its own hose.',
     noHelp: 'No bit helps: this compressor cannot hold a new {nozzle} at {target}.',
     fits: 'A {nozzle} fits.',
     noneFits: 'No nozzle from No. 2 up fits.',
@@ -82,8 +91,8 @@ export const common = {
     sets: {
       'fractional-64': 'inch, by 64ths',
       'fractional-32': 'inch, by 32nds',
-      'metric-0.5': 'metric, by 0.5 mm',
-      'metric-0.1': 'metric, by 0.1 mm',
+      'metric-0_5': 'metric, by 0.5 mm',
+      'metric-0_1': 'metric, by 0.1 mm',
       'number-letter': 'numbers and letters',
     },
     safety:

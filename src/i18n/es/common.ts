@@ -21,14 +21,14 @@ export const common = {
     regulator: 'regulador',
   },
   reasons: {
-    'short-of-air': 'La boquilla pide más aire del que da el compresor a la presión que hace falta.',
+    'short-of-air': 'Hace falta más aire del que da el compresor a la presión que se necesita.',
     'above-unload':
       'Haría falta en el compresor más presión que la de descarga: antes de llegar, se descarga.',
     'no-nozzle': 'Este equipo no tiene boquilla.',
     'air-taken-first':
       'Las escafandras y herramientas se llevan todo el aire; a la boquilla no le queda nada.',
     choked: 'Por aquí no pasa tanto aire, es muy angosto: {element}.',
-    regulator: 'El regulador de la salida {number} está muy bajo para esta presión.',
+    regulator: 'El regulador de la boquilla {number} está muy bajo para esta presión.',
     'bore-range': 'Aguanta con cualquier paso hasta 60 mm (2 3/8 in).',
   },
   check: {
@@ -43,6 +43,8 @@ export const common = {
     needsFirst:
       'gasta {needed} de los {delivered} que da a {pressure}, con lo de respirar y las herramientas',
     noPressure: 'sin presión estable',
+    unfinished: 'Todavía no hay resultado',
+    unfinishedFields: 'Falta terminar una casilla de abajo. | Faltan por terminar {count} casillas de abajo.',
     stale: 'Es el último resultado completo; hay una casilla a medias.',
     brokenLink: 'Ese enlace no traía una prueba que se pudiera leer; esta empieza de cero.',
     share: 'Copiar enlace',
@@ -54,14 +56,16 @@ export const common = {
       'Es una guía, no un permiso: deciden los manuales de las máquinas, las normas del lugar y una persona competente.',
   },
   ruler: {
-    label:
-      'Regla del paso: nueva {newBore}, hoy {nowBore}, límite {limit}. En el paso límite este equipo llega justo a la presión pedida.',
+    label: 'Regla del paso: nueva {newBore}, hoy {nowBore}, límite {limit}.',
+    reaches: 'En el paso límite este equipo llega justo a la presión pedida.',
     labelNoLimit:
       'Regla del paso: nueva {newBore}, hoy {nowBore}. Con ningún paso se llega a la presión pedida.',
     handle: 'Paso de hoy: arrástrelo o muévalo con las flechas',
     new: 'nueva',
     now: 'hoy',
     limit: 'límite',
+    limitAt: 'límite {bore}',
+    limitOver: 'límite: más de {bore}',
     uncertainty: '±4 %',
     limitedBy: {
       line: 'Aquí el límite lo pone la manguera: no cuenta un paso más ancho que ella.',
@@ -75,8 +79,11 @@ export const common = {
     orderText: 'Si la de {bit} pasa entera, pida la boquilla siguiente.',
     noGoText: 'Si la de {bit} pasa entera, no use más esta boquilla a {target}.',
     noWarningBit: 'Por una {nozzle} nueva ya pasa la {bit}: aquí no hay broca que avise, pida ya.',
-    noWarning:
-      'Ninguna broca bajo el límite sirve con una {nozzle} nueva: aquí no hay broca que avise, pida ya.',
+    noWarning: 'En este juego no hay broca tan chica que avise aquí: mida con un calibre.',
+    noHelpRig: 'Ninguna broca ayuda: este equipo no aguanta una {nozzle} nueva a {target}.',
+    noHelpOthers:
+      'Ninguna broca ayuda: con las demás boquillas como están, este equipo no aguanta una {nozzle} nueva a {target}.',
+    noHelpLine: 'Ninguna broca ayuda: una {nozzle} nueva es más ancha que su propia manguera.',
     noHelp: 'No hay broca que valga: este compresor no aguanta {target} con una boquilla {nozzle} nueva.',
     fits: 'Con una {nozzle} sí.',
     noneFits: 'No aguanta con ninguna desde la No. 2.',
@@ -87,8 +94,8 @@ export const common = {
     sets: {
       'fractional-64': 'pulgadas, de 1/64 en 1/64',
       'fractional-32': 'pulgadas, de 1/32 en 1/32',
-      'metric-0.5': 'métricas, de 0.5 en 0.5 mm',
-      'metric-0.1': 'métricas, de 0.1 en 0.1 mm',
+      'metric-0_5': 'métricas, de 0.5 en 0.5 mm',
+      'metric-0_1': 'métricas, de 0.1 en 0.1 mm',
       'number-letter': 'de número y de letra',
     },
     safety:

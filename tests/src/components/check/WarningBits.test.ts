@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import type { BitChoice } from '#shared/form/checkForm.ts'
 import type { OutletAnswer } from '#shared/contracts/check.ts'
 import type { UnitSystem } from '#shared/units/quantities.ts'
 import WarningBits from '../../../../src/components/check/WarningBits.vue'
@@ -14,7 +15,8 @@ function showBits(
     newBoreMm = noSix,
     units = 'us',
     language = 'en',
-  }: { newBoreMm?: number; units?: UnitSystem; language?: 'en' | 'es' } = {},
+    bitSet = 'fractional-64',
+  }: { newBoreMm?: number; units?: UnitSystem; language?: 'en' | 'es'; bitSet?: BitChoice } = {},
 ) {
   const answer: OutletAnswer = {
     limitBoreMm: 10.8,
@@ -26,7 +28,7 @@ function showBits(
   }
   const { wrapper } = mountInApp(
     WarningBits,
-    { outlet: answer, newBoreMm, targetKpa: 100 * psi, bitSet: 'fractional-64' },
+    { outlet: answer, newBoreMm, targetKpa: 100 * psi, bitSet, outletCount: 1 },
     { units, language },
   )
   const texts = (selector: string) => wrapper.findAll(selector).map(textOf)
@@ -49,7 +51,10 @@ describe('the warning bits', () => {
   })
 
   it('with the target in the person’s units and the bit as it is named', () => {
-    const { noGo } = showBits({ noGoBit: { name: '11 mm', mm: 11 } }, { units: 'metric' })
+    const { noGo } = showBits(
+      { noGoBit: { name: '11 mm', mm: 11 } },
+      { units: 'metric', bitSet: 'metric-0.5' },
+    )
     expect(noGo[2]).toBe('If 11 mm goes all the way through, stop using this nozzle at 6.9 bar.')
   })
 
@@ -87,11 +92,11 @@ describe('the warning bits', () => {
 
   it.each([
     ['choked:whip', 'The whip is too narrow: this much air cannot pass it.'],
-    ['regulator:2', 'The regulator of outlet 2 is set too low for this pressure.'],
+    ['regulator:2', 'The regulator of nozzle 2 is set too low for this pressure.'],
     ['air-taken-first', 'Hoods and tools take all the air there is; nothing is left for the nozzle.'],
   ])('give the reason %s where no bore reaches the target', (reason, sentence) => {
     const [rest] = showBits({ limitBoreMm: null, limitedBy: null, reason }).rest
-    expect(rest).toContain('cannot hold a new No. 6 at 100 psi. No nozzle from No. 2 up fits.')
+    expect(rest).toContain('cannot hold a new No. 6 at 100 psi.')
     expect(rest).toContain(sentence)
   })
 
