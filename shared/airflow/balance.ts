@@ -93,15 +93,16 @@ function balance(rig: PreparedRig, search: RigSearch) {
   const { delivery, firstMassFlow } = rig
   const ambientPa = rig.ambient.pressurePa
   const fullLoad = delivery.massFlows[delivery.massFlows.length - 2]!
-  let state = startState()
-  let best = startState()
+  const [one, other] = [startState(), startState()]
+  let state = one
+  let best = other
   let bestImbalance = Infinity
   let earlierX = search.origin
   let earlierFlow = 0
   let earlierPa = 0
   const root = findRoot({
     evaluate(x) {
-      if (state === best) state = { ...state }
+      state = best === one ? other : one
       search.march(x, state)
       const delivered = deliveryAt(delivery, ambientPa + state.compressorGaugePa)
       const imbalance = (state.massFlow + firstMassFlow - delivered) / fullLoad
@@ -140,12 +141,23 @@ function balance(rig: PreparedRig, search: RigSearch) {
   return { state: best, marches: root.evaluations }
 }
 
+/**
+ * Compressor pressure over flow with the only nozzle sonic, Pa s/kg: every pressure then stands nearly in proportion to
+ * the flow, and an element of ordinary friction adds to the square of it.
+ */
+function roughPressurePerFlow({ outlets, airLine }: PreparedRig): number {
+  const { nozzle, line } = outlets[0]!
+  let square = (nozzle.conductance * criticalFlowFunction) ** -2
+  for (const element of line) square += element.roughSquare
+  for (const element of airLine) square += element.roughSquare
+  return Math.sqrt(square)
+}
+
 /** One outlet: its flow is the variable, the nozzle pressure and every pressure before it follow. */
 function balanceOneOutlet(rig: PreparedRig): Balance {
   const outlet = rig.outlets[0]!
   const ambientPa = rig.ambient.pressurePa
   const { delivery, firstMassFlow } = rig
-  const choked = outlet.nozzle.conductance * criticalFlowFunction
   const high = rig.openMassFlow - firstMassFlow
   const march = startMarch()
   const { state, marches } = balance(rig, {
@@ -158,7 +170,7 @@ function balanceOneOutlet(rig: PreparedRig): Balance {
     },
     low: 0,
     high,
-    guess: Math.min(high, meetDelivery(delivery, firstMassFlow, 0, 1, 0, 1 / choked)),
+    guess: Math.min(high, meetDelivery(delivery, firstMassFlow, 0, 1, 0, roughPressurePerFlow(rig))),
     origin: 0,
     offset: 0,
   })

@@ -38,18 +38,15 @@ export interface Delivery {
 export function prepareDelivery(compressor: Compressor, ambient: Ambient): Delivery {
   const mass = (compressor.conditionFactor ?? 1) * ambient.dryAirDensity
   const { freeAir, setPressurePa, unloadPressurePa } = compressor
-  const pressuresPa: number[] = []
-  const massFlows: number[] = []
-  if (typeof freeAir !== 'number') {
-    for (const point of freeAir) {
-      if (point.pressurePa >= setPressurePa) break
-      pressuresPa.push(point.pressurePa)
-      massFlows.push(mass * point.freeAirM3S)
-    }
+  const atSet = mass * freeAirAt(compressor, setPressurePa)
+  if (typeof freeAir === 'number') {
+    return { pressuresPa: [setPressurePa, unloadPressurePa], massFlows: [atSet, 0] }
   }
-  pressuresPa.push(setPressurePa, unloadPressurePa)
-  massFlows.push(mass * freeAirAt(compressor, setPressurePa), 0)
-  return { pressuresPa, massFlows }
+  const below = freeAir.filter((point) => point.pressurePa < setPressurePa)
+  return {
+    pressuresPa: [...below.map((point) => point.pressurePa), setPressurePa, unloadPressurePa],
+    massFlows: [...below.map((point) => mass * point.freeAirM3S), atSet, 0],
+  }
 }
 
 /** kg/s of dry air delivered at a pressure, Pa absolute. */

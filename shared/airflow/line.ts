@@ -5,6 +5,8 @@ import type { LineElement } from './rig.ts'
 export const defaultRoughnessM = 1e-5
 const laminarLimit = 2300
 const turbulentLimit = 4000
+/** of a hose that works hard */
+const ordinaryFriction = 0.018
 
 /**
  * Darcy friction factor.
@@ -35,9 +37,9 @@ function colebrook(reynolds: number, relativeRoughness: number): number {
   for (let step = 0; step < 8; step++) {
     const inside = a + b * x
     const excess = x + perDecade * Math.log(inside)
-    const slope = 1 + (perDecade * b) / inside
-    const bend = perDecade * (b / inside) ** 2
-    const change = excess / (slope + (excess * bend) / (2 * slope))
+    const share = b / inside
+    const slope = 1 + perDecade * share
+    const change = excess / (slope + (excess * perDecade * share * share) / (2 * slope))
     x -= change
     // what is left is under a thousandth of the cube of this change
     if (Math.abs(change) <= 1e-4) break
@@ -57,19 +59,37 @@ export interface LineFlow {
   /** φm L / D */
   lengthRatio: number
   lossK: number
+  /** what it adds to (p/ṁ)² with an ordinary friction factor and without its logarithm: for a first guess */
+  roughSquare: number
 }
 
-export function prepareElement(element: LineElement, place: string, temperatureK: number): LineFlow {
+/** What every element of a rig shares: its air. */
+export interface LineAir {
+  viscosityPaS: number
+  /** √(R T0), m/s */
+  isothermalSpeed: number
+}
+
+export function prepareLineAir(temperatureK: number): LineAir {
+  return { viscosityPaS: viscosity(temperatureK), isothermalSpeed: Math.sqrt(gasConstant * temperatureK) }
+}
+
+/** An element in its air; without a name of its own it is called by its place. */
+export function prepareElement(element: LineElement, air: LineAir, place: string, index: number): LineFlow {
   const d = element.insideDiameterM
   const area = (Math.PI / 4) * d * d
+  const chokePerFlow = air.isothermalSpeed / area
+  const lengthRatio = ((element.mediaFactor ?? 1) * (element.lengthM ?? 0)) / d
+  const lossK = element.lossK ?? 0
   return {
-    name: element.name || place,
+    name: element.name || `${place}-${index + 1}`,
     insideDiameterM: d,
-    chokePerFlow: Math.sqrt(gasConstant * temperatureK) / area,
-    reynoldsPerFlow: 4 / (Math.PI * d * viscosity(temperatureK)),
+    chokePerFlow,
+    reynoldsPerFlow: 4 / (Math.PI * d * air.viscosityPaS),
     relativeRoughness: (element.roughnessM ?? defaultRoughnessM) / d,
-    lengthRatio: ((element.mediaFactor ?? 1) * (element.lengthM ?? 0)) / d,
-    lossK: element.lossK ?? 0,
+    lengthRatio,
+    lossK,
+    roughSquare: chokePerFlow * chokePerFlow * (ordinaryFriction * lengthRatio + lossK),
   }
 }
 
@@ -117,13 +137,16 @@ function squareRise(chi: number, loss: number): number {
   const root = Math.sqrt(gap * gap + 4 * loss * (delta + 0.5))
   let u = gap < 0 ? (root - gap) / (2 * delta + 1) : (2 * loss) / (root + gap)
   for (let step = 0; step < 40; step++) {
-    const excess = u - chi * (loss + Math.log1p(u))
-    const slope = 1 - chi / (1 + u)
-    const bend = chi / (1 + u) ** 2
+    const square = 1 + u
+    // the plain logarithm is twice as quick, and its last digit is lost only beside a loss as small as itself
+    const excess = u - chi * (loss + (loss > 0.01 ? Math.log(square) : Math.log1p(u)))
+    const slope = 1 - chi / square
+    const bend = chi / (square * square)
     const change = excess / (slope - (excess * bend) / (2 * slope))
     u -= change
-    const left = (bend / (2 * slope)) ** 2 + bend / (3 * (1 + u) * slope)
-    if (Math.abs(change) ** 3 * left <= 1e-16 * u) break
+    const half = bend / (2 * slope)
+    const left = half * half + bend / (3 * square * slope)
+    if (Math.abs(change * change * change) * left <= 1e-16 * u) break
   }
   return u
 }

@@ -2,8 +2,8 @@ import { resolveAmbient } from './ambient.ts'
 import type { Ambient } from './ambient.ts'
 import { airTakenFirstMass, deliveryAt, prepareDelivery } from './compressor.ts'
 import type { Delivery } from './compressor.ts'
-import { marchBack, prepareElement, restartMarch, startMarch } from './line.ts'
-import type { LineFlow, March } from './line.ts'
+import { marchBack, prepareElement, prepareLineAir, restartMarch, startMarch } from './line.ts'
+import type { LineAir, LineFlow, March } from './line.ts'
 import { gaugeAtMassFlow, massFlowAtGauge, prepareNozzle } from './nozzle.ts'
 import type { NozzleFlow } from './nozzle.ts'
 import type { LineElement, Rig, Site } from './rig.ts'
@@ -30,21 +30,24 @@ export interface PreparedOutlet {
   regulatorGaugePa: number
 }
 
+function prepareLine(line: readonly LineElement[], air: LineAir, place: string): LineFlow[] {
+  return line.map((element, index) => prepareElement(element, air, place, index))
+}
+
 export function prepareRig(rig: Rig, site: Site): PreparedRig {
   const ambient = resolveAmbient(site)
   const lineTemperatureK = ambient.temperatureK + (rig.compressor.lineTemperatureRiseK ?? 0)
   const delivery = prepareDelivery(rig.compressor, ambient)
-  const prepareLine = (line: readonly LineElement[], place: string) =>
-    line.map((element, index) => prepareElement(element, `${place}-${index + 1}`, lineTemperatureK))
+  const air = prepareLineAir(lineTemperatureK)
   return {
     ambient,
     lineTemperatureK,
     delivery,
     firstMassFlow: airTakenFirstMass(rig.airTakenFirst, ambient),
     openMassFlow: deliveryAt(delivery, ambient.pressurePa),
-    airLine: prepareLine(rig.airLine, 'air-line'),
+    airLine: prepareLine(rig.airLine, air, 'air-line'),
     outlets: rig.outlets.map((outlet, index) => ({
-      line: prepareLine(outlet.line, `outlet-${index + 1}-line`),
+      line: prepareLine(outlet.line, air, `outlet-${index + 1}-line`),
       nozzle: prepareNozzle(outlet.nozzle, lineTemperatureK, ambient.pressurePa),
       boreM: outlet.nozzle.boreM,
       regulatorGaugePa: outlet.regulatorPa === undefined ? Infinity : outlet.regulatorPa - ambient.pressurePa,

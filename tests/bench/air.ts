@@ -168,7 +168,7 @@ function fillToCaps(body: CheckRequest): CheckRequest {
   }
 }
 
-const half = { seed, numRuns: 5_000 }
+const half = { seed, numRuns: Number(process.env.BODIES ?? 10_000) / 2 }
 const atCaps = [
   ...fc.sample(checkBodies('declared'), half),
   ...fc.sample(checkBodies('realistic'), half),
