@@ -114,42 +114,62 @@ export function traceDelivery(rig: PreparedRig, outletIndex: number): DeliveryCu
     const nozzleGaugePa = own < 0 ? NaN : gaugeAfterLine(outlet.line, own, feed, ambient.pressurePa)
     return { total, gauge, own, feed, nozzleGaugePa }
   }
+  const isChokedAt = (pressurePa: number) => {
+    const { own, nozzleGaugePa } = arrivalAt(pressurePa)
+    return own >= 0 && Number.isNaN(nozzleGaugePa)
+  }
   const pointOf = ({ nozzleGaugePa, total }: { nozzleGaugePa: number; total: number }): AirPoint => ({
     nozzleGaugePa,
     freeAirM3S: (total + firstMassFlow) / ambient.dryAirDensity,
   })
-  const points: AirPoint[] = []
+  let pressures = deliveryPressures(rig)
   let end: Reason | null = null
+  const chokedPa = pressures.findLast(isChokedAt)
+  if (chokedPa !== undefined) {
+    const { total, gauge, own, feed } = arrivalAt(chokedPa)
+    end =
+      chokedForwards(rig.airLine, total, gauge, ambient.pressurePa) ??
+      chokedForwards(outlet.line, own, feed, ambient.pressurePa)
+    pressures = pressures.filter((pressure) => pressure > chokedPa)
+    const [next, top] = [pressures[0], pressures[pressures.length - 1]]
+    if (next !== undefined && top !== undefined) {
+      const [, edgePa] = findChange(chokedPa, next, isChokedAt)
+      pressures = [...spreadFrom(edgePa, top), ...pressures].sort((a, b) => a - b)
+    }
+  }
+  const points: AirPoint[] = []
   let earlierPa = ambient.pressurePa
-  for (const pressurePa of deliveryPressures(rig)) {
+  for (const pressurePa of pressures) {
     const arrival = arrivalAt(pressurePa)
     if (arrival.own < 0) {
-      const last = lastBefore(earlierPa, pressurePa, (pressure) => arrivalAt(pressure).own >= 0)
+      const [last] = findChange(earlierPa, pressurePa, (pressure) => arrivalAt(pressure).own >= 0)
       const lastArrival = arrivalAt(last)
       if (last > earlierPa && lastArrival.nozzleGaugePa >= 0) points.push(pointOf(lastArrival))
       return { points, end, isTakenByOthers: true }
     }
-    if (arrival.nozzleGaugePa >= 0) {
-      points.push(pointOf(arrival))
-    } else if (Number.isNaN(arrival.nozzleGaugePa)) {
-      end =
-        chokedForwards(rig.airLine, arrival.total, arrival.gauge, ambient.pressurePa) ??
-        chokedForwards(outlet.line, arrival.own, arrival.feed, ambient.pressurePa)
-    }
+    if (arrival.nozzleGaugePa >= 0) points.push(pointOf(arrival))
     earlierPa = pressurePa
   }
   return { points, end, isTakenByOthers: false }
 }
 
-/** The highest value between two at which something still is so, by halving. */
-function lastBefore(low: number, high: number, isSo: (value: number) => boolean): number {
+/** The value up to which something is so from low on, and the one from which it is not, by halving. */
+function findChange(low: number, high: number, isSo: (value: number) => boolean): [number, number] {
   let [yes, no] = [low, high]
   for (let step = 0; step < stepsToEnd; step++) {
     const middle = (yes + no) / 2
     if (isSo(middle)) yes = middle
     else no = middle
   }
-  return yes
+  return [yes, no]
+}
+
+/** Pressures from the edge of a choke up, close together there: the nozzle's pressure leaves it like a root. */
+function spreadFrom(edgePa: number, topPa: number): number[] {
+  return Array.from(
+    { length: stepsOfFall },
+    (_, step) => edgePa + (topPa - edgePa) * (step / stepsOfFall) ** 2,
+  )
 }
 
 /** The first element that a march from the compressor cannot pass. */
@@ -213,11 +233,18 @@ export function traceDraw(
   return { points, end: null }
 }
 
-/** The nozzle pressures between which there is a delivery; 0 and Infinity where there is none. */
-function reachOf({ points }: AirCurve) {
+/** A range of nozzle pressures, Pa gauge, with the target, the operating points and some of the delivery in it. */
+function rangeToShow({ points }: AirCurve, targetGaugePa: number, operatingGaugesPa: readonly number[]) {
+  const lowest = Math.min(0.55 * targetGaugePa, ...operatingGaugesPa.map((gauge) => 0.85 * gauge))
+  const highest = Math.max(1.2 * targetGaugePa, ...operatingGaugesPa.map((gauge) => 1.06 * gauge))
+  const [first, last] = [points[0], points[points.length - 1]]
+  if (!first || !last) return { lowestGaugePa: lowest, highestGaugePa: highest }
+  const isUnder = last.nozzleGaugePa < 1.2 * lowest
+  const fromDelivery = 0.9 * Math.max(first.nozzleGaugePa, 0.5 * last.nozzleGaugePa)
   return {
-    firstGaugePa: points[0]?.nozzleGaugePa ?? 0,
-    lastGaugePa: points[points.length - 1]?.nozzleGaugePa ?? Infinity,
+    lowestGaugePa: isUnder ? Math.min(lowest, fromDelivery) : lowest,
+    // where the line chokes at lower pressures the delivery begins above them all
+    highestGaugePa: Math.max(highest, Math.min(last.nozzleGaugePa, 1.3 * first.nozzleGaugePa)),
   }
 }
 
@@ -247,18 +274,7 @@ export function traceDeliveryAndDraw(
   )
   const gauges = operatingPoints.flatMap((point) => (point ? [point.nozzleGaugePa] : []))
   const delivery = traceDelivery(rig, outletIndex)
-  const { firstGaugePa, lastGaugePa } = reachOf(delivery)
-  const lowestGaugePa = Math.min(
-    0.55 * targetGaugePa,
-    0.85 * lastGaugePa,
-    ...gauges.map((gauge) => 0.85 * gauge),
-  )
-  const highestGaugePa = Math.max(
-    1.2 * targetGaugePa,
-    // where the line chokes at lower pressures the delivery begins above them all
-    Math.min(lastGaugePa, 1.2 * firstGaugePa),
-    ...gauges.map((gauge) => 1.06 * gauge),
-  )
+  const { lowestGaugePa, highestGaugePa } = rangeToShow(delivery, targetGaugePa, gauges)
   return {
     lowestGaugePa,
     highestGaugePa,

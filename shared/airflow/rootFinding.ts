@@ -34,7 +34,8 @@ const mostEvaluations = 200
  *
  * Guesses come from the caller, who knows the shape of the function; the bracket keeps every one of them honest. When
  * a guess moves less than the width allowed, it is pushed across the root, so that the bracket closes in one more
- * step. Three steps without halving the bracket are followed by a bisection.
+ * step. Three steps without halving the bracket are followed by a bisection, and from then on one is: guesses that were
+ * wrong so long know the function badly.
  *
  * Ends     bracket ≤ widthTolerance and residual ≤ residualTolerance, or residual ≤ zeroTolerance, or nothing left
  *          between the ends (the function jumps there: the root is the jump); never more than 200 evaluations
@@ -50,6 +51,7 @@ export function findRoot(search: RootSearch): Root {
   let bestResidual = Infinity
   let checkedWidth = high - low
   let sinceHalved = 0
+  let patience = 3
   let evaluations = 0
   while (evaluations < mostEvaluations) {
     const residual = evaluate(x)
@@ -81,7 +83,10 @@ export function findRoot(search: RootSearch): Root {
     if (width <= checkedWidth / 2) {
       checkedWidth = width
       sinceHalved = 0
-    } else if (++sinceHalved >= 3) next = NaN
+    } else if (++sinceHalved >= patience) {
+      next = NaN
+      patience = 1
+    }
     if (!(next > low && next < high)) {
       next = low + width / 2
       sinceHalved = 0

@@ -5,6 +5,7 @@ import {
   elementPressureDrop,
   frictionFactor,
   prepareElement,
+  prepareLineAir,
 } from '#shared/airflow/line.ts'
 
 /** Colebrook's equation by halving 1/√f, apart from the code's own iteration. */
@@ -118,7 +119,12 @@ describe('a hose', () => {
     const roughnessM = 2e-5
     const outletPa = integrate(inletPa, massFlow, bore, length, roughnessM, kelvin)
     expect(outletPa).toBeGreaterThan(0)
-    const element = prepareElement({ insideDiameterM: bore, lengthM: length, roughnessM }, 'hose', kelvin)
+    const element = prepareElement(
+      { insideDiameterM: bore, lengthM: length, roughnessM },
+      prepareLineAir(kelvin),
+      'hose',
+      0,
+    )
     const drop = elementPressureDrop(element, massFlow, outletPa)
     expect(Math.abs((outletPa + drop) / inletPa - 1)).toBeLessThan(1e-6)
     expect(Math.abs(elementOutletPressure(element, massFlow, inletPa) / outletPa - 1)).toBeLessThan(1e-5)
@@ -134,12 +140,16 @@ describe('a hose', () => {
     const head = ((massFlow / area) ** 2 * gasConstant * kelvin) / outletPa / 2
     const reynolds = (4 * massFlow) / (Math.PI * 0.05 * viscosity(kelvin))
     const byHand = ((1.3 * colebrookByHalving(reynolds, 1e-5 / 0.05) * 3) / 0.05 + 2) * head
-    const drop = elementPressureDrop(prepareElement(given, 'hose', kelvin), massFlow, outletPa)
+    const drop = elementPressureDrop(
+      prepareElement(given, prepareLineAir(kelvin), 'hose', 0),
+      massFlow,
+      outletPa,
+    )
     expect(Math.abs(drop / byHand - 1)).toBeLessThan(1e-3)
   })
 
   it('is choked where G² R T0 reaches p2²', () => {
-    const element = prepareElement({ insideDiameterM: 0.02, lengthM: 1 }, 'hose', 300)
+    const element = prepareElement({ insideDiameterM: 0.02, lengthM: 1 }, prepareLineAir(300), 'hose', 0)
     const limit = (3e5 * (Math.PI / 4) * 0.02 ** 2) / Math.sqrt(gasConstant * 300)
     expect(elementPressureDrop(element, limit * 1.000001, 3e5)).toBeNaN()
     expect(elementPressureDrop(element, limit * 0.999999, 3e5)).toBeGreaterThan(0)

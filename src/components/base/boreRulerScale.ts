@@ -38,13 +38,13 @@ const nameHalf = 22
 const labelGap = 8
 const wallHalf = 6
 
-/** The ruler reaches a sixteenth past whatever is drawn, at most as far as keeps sixteenths apart. */
+/** A sixteenth past whatever is drawn; a limit so far off that sixteenths would run together is named only. */
 export function rangeOf({ newBoreMm, boreMm, limitBoreMm }: RulerBores): RulerRange {
   const marks = [newBoreMm, boreMm]
-  if (limitBoreMm !== null) marks.push(Math.min(limitBoreMm, newBoreMm + 8 * sixteenthMm))
-  const from = Math.min(...marks) - 0.5 * sixteenthMm
-  const to = Math.max(...marks, newBoreMm + 2 * sixteenthMm) + 0.8 * sixteenthMm
-  return { from: Math.max(0.2, from), to }
+  if (limitBoreMm !== null && limitBoreMm <= newBoreMm + 8 * sixteenthMm) marks.push(limitBoreMm)
+  const from = Math.max(0.2, Math.min(...marks) - 0.5 * sixteenthMm)
+  const last = Math.max(...marks, newBoreMm + 2 * sixteenthMm)
+  return { from, to: last + Math.max(0.8 * sixteenthMm, 0.05 * (last - from)) }
 }
 
 /** The frame is drawn a pixel inside the paper. */
@@ -56,9 +56,10 @@ export function mmOfX(x: number, { from, to }: RulerRange, width: number): numbe
   return from + ((x - 1) / (width - 2)) * (to - from)
 }
 
-/** How far a nozzle can be dragged: on the paper, and no wider than a check can be asked for. */
+/** How far a nozzle can be dragged: its handle still on the page, and no wider than a check can be asked for. */
 export function widestDragMm(newBoreMm: number, range: RulerRange): number {
-  return Math.max(newBoreMm, Math.min(largestBoreMm, range.to))
+  const onPage = range.to - 0.03 * (range.to - range.from)
+  return Math.max(newBoreMm, Math.min(largestBoreMm, onPage))
 }
 
 /** Ticks at 64ths of an inch or half millimetres; fewer, and fewer names, where they would run together. */
@@ -90,7 +91,7 @@ export function ticksOf(range: RulerRange, width: number, system: UnitSystem, ne
 
 /** On the generous side: the page may be drawn before its typeface is there. */
 export function textWidth(text: string, fontSize: number): number {
-  return text.length * fontSize * 0.6
+  return (text.length * 0.55 + 0.7) * fontSize
 }
 
 /**

@@ -22,6 +22,8 @@ export interface ChartLine {
 export interface ChartPicture {
   delivery: ChartPoint[]
   deliveryLabel: string
+  /** a word where the delivery stops before the chart does */
+  deliveryEndWord: string | null
   lines: ChartLine[]
   lowest: number
   highest: number
@@ -35,13 +37,31 @@ const plotHeight = 250
 const labelGap = 16
 const labelRoom = 86
 
-/** Air from a little under the least draw to a little over the most, but never so far that the delivery lies flat. */
-function airRange({ delivery, lines, lowest, highest }: ChartPicture) {
-  const inRange = delivery.filter(({ x }) => x >= lowest && x <= highest)
-  const delivered = Math.max(0, ...inRange.map(({ y }) => y))
+/** The part of a line between two x, ends put in where it crosses them. */
+export function clipLine(points: readonly ChartPoint[], lowest: number, highest: number): ChartPoint[] {
+  return points.flatMap((point, index) => {
+    const clipped = point.x >= lowest && point.x <= highest ? [point] : []
+    const next = points[index + 1]
+    if (!next) return clipped
+    for (const x of [lowest, highest]) {
+      if (point.x < x && next.x > x) {
+        clipped.push({ x, y: point.y + ((next.y - point.y) * (x - point.x)) / (next.x - point.x) })
+      }
+    }
+    return clipped
+  })
+}
+
+/**
+ * Air from a little under the least draw to a little over the most, with all of the delivery that is not throttled and
+ * every operating point in it; but never so far that the delivery lies flat.
+ */
+export function airRange({ delivery, lines, lowest, highest }: ChartPicture) {
+  const delivered = Math.max(0, ...clipLine(delivery, lowest, highest).map(({ y }) => y))
   const drawn = lines.flatMap(({ points }) => points.map(({ y }) => y))
-  const most = Math.max(delivered, Math.min(Math.max(0, ...drawn), 3.2 * (delivered || Infinity)))
-  const least = Math.min(most, ...drawn)
+  const met = lines.flatMap(({ operatingPoint }) => (operatingPoint ? [operatingPoint.y] : []))
+  const most = Math.max(delivered, ...met, Math.min(Math.max(0, ...drawn), 3.2 * (delivered || Infinity)))
+  const least = Math.min(delivered || most, ...met, ...drawn)
   return { min: 0.8 * least, max: 1.08 * most || 1 }
 }
 
@@ -75,6 +95,8 @@ export function chartData(
 function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number, min: number) {
   const { delivery, lines, lowest, highest, target } = picture
   const font = { family: colours.font, size: 12, weight: 600 as const }
+  // on a ground of their own, so that no line strikes them through
+  const backed = { font, backgroundColor: colours.ground, borderRadius: 3 }
   const found: Record<string, AnnotationOptions> = {
     target: {
       type: 'line',
@@ -91,24 +113,39 @@ function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number
       content: picture.targetLabel,
       position: { x: target > (lowest + highest) / 2 ? 'end' : 'start', y: 'end' },
       color: colours.muted,
-      font,
+      ...backed,
       padding: { left: 2, right: 2, top: 0, bottom: 3 },
     },
   }
   // At its right end where the delivery is still flat there, else where it begins.
-  const inRange = delivery.filter(({ x, y }) => x >= lowest && x <= highest && y >= min)
+  const inRange = clipLine(delivery, lowest, highest).filter(({ y }) => y >= min)
   const [start, end] = [inRange[0], inRange[inRange.length - 1]]
   if (start && end) {
-    const runsThrough = end.y > 0.95 * start.y && delivery.some(({ x }) => x >= highest)
+    const runsThrough = end.y > 0.95 * start.y && end.x >= highest
     found.delivery = {
       type: 'label',
-      xValue: runsThrough ? highest : Math.max(lowest, delivery[0]!.x),
+      xValue: runsThrough ? highest : start.x,
       yValue: Math.min(runsThrough ? end.y : start.y, max),
       content: picture.deliveryLabel,
       position: { x: runsThrough ? 'end' : 'start', y: 'end' },
       color: colours.ink,
-      font,
-      padding: { left: 2, top: 0, right: 2, bottom: 5 },
+      ...backed,
+      padding: { left: 2, top: 0, right: 2, bottom: 1 },
+      yAdjust: -4,
+    }
+  }
+  if (end && picture.deliveryEndWord) {
+    const isRight = end.x > lowest + 0.6 * (highest - lowest)
+    found.deliveryEnd = {
+      type: 'label',
+      xValue: end.x,
+      yValue: Math.min(end.y, max),
+      content: picture.deliveryEndWord,
+      position: { x: isRight ? 'end' : 'start', y: 'center' },
+      xAdjust: isRight ? -6 : 6,
+      color: colours.ink,
+      ...backed,
+      padding: { left: 2, top: 0, right: 2, bottom: 0 },
     }
   }
   const labelled = lines.flatMap((line) => {
@@ -129,9 +166,9 @@ function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number
       content: line.endWord ? `${line.label}: ${line.endWord}` : line.label,
       position: { x: 'start', y: 'center' },
       color: line.colour,
-      font,
+      ...backed,
       xAdjust: line.operatingPoint && line.operatingPoint.x >= end.x - 0.02 * (highest - lowest) ? 8 : 0,
-      padding: { left: 5, right: 0, top: 0, bottom: 0 },
+      padding: { left: 5, right: 2, top: 0, bottom: 0 },
     }
   })
   lines.forEach(({ operatingPoint, colour }, index) => {

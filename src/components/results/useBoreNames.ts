@@ -1,10 +1,11 @@
-import { HOSE_SIZES } from '#shared/catalogue/hoses.ts'
 import { nozzleNumberOf } from '#shared/catalogue/nozzleNumbers.ts'
+import { useFieldWords } from '../../composables/useFieldWords.ts'
 import { useWords } from '../../composables/useWords.ts'
 
 /** Bores and hoses as the trade says them. */
 export function useBoreNames() {
-  const { quantity, system } = useWords()
+  const { quantity } = useWords()
+  const { typedValue } = useFieldWords()
 
   /** `No. 6`, or the bore where it is no whole number of sixteenths. */
   function nozzleName(boreMm: number): string {
@@ -12,12 +13,9 @@ export function useBoreNames() {
     return number === null ? quantity('bore', boreMm) : `No. ${number}`
   }
 
-  /** `1 1/4 in`; a usual size in metric by its round name, `32 mm`. */
+  /** `1 1/4 in`, `31.75 mm`: as the form shows it. */
   function hoseName(insideDiameterMm: number): string {
-    const size = HOSE_SIZES.find((usual) => Math.abs(usual.insideDiameterMm - insideDiameterMm) < 0.0005)
-    return size && system.value === 'metric'
-      ? `${size.metricName}\u00a0mm`
-      : quantity('diameter', insideDiameterMm).replaceAll(' ', '\u00a0')
+    return typedValue('diameter', insideDiameterMm).replaceAll(' ', '\u00a0')
   }
 
   return { nozzleName, hoseName }

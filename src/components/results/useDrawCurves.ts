@@ -79,16 +79,24 @@ export function useDrawCurves(check: () => AnsweredCheck) {
     return list
   })
 
+  /** Does the delivery end on the chart, because the other nozzles take all? */
+  const isDeliveryTaken = computed(() => {
+    const { delivery, highestGaugePa } = curves.value
+    const last = delivery.points.at(-1)
+    return delivery.isTakenByOthers && last !== undefined && last.nozzleGaugePa < highestGaugePa
+  })
+
   /** In words: where each draw balances, and why a line ends. */
   const notes = computed(() => {
     const { delivery, lowestGaugePa } = curves.value
-    const ends = draws.value.flatMap(({ end, label }) => {
+    const ends = draws.value.flatMap(({ end, label, points }) => {
       if (!end) return []
       const [code, element = ''] = end.split(':')
-      if (code === 'choked')
-        return [t('results.curve.endsChoked', { line: label, element: elementName(element) })]
-      return [t('results.curve.endsHeld')]
+      const words = { line: label, element: elementName(element) }
+      if (code !== 'choked') return [t('results.curve.endsHeld')]
+      return [t(points.length > 0 ? 'results.curve.endsChoked' : 'results.curve.neverPasses', words)]
     })
+    if (isDeliveryTaken.value) ends.push(t('results.curve.endsTaken'))
     const first = delivery.points[0]
     const isCutLow = delivery.end && first && first.nozzleGaugePa > lowestGaugePa
     if (isCutLow) {
@@ -114,6 +122,7 @@ export function useDrawCurves(check: () => AnsweredCheck) {
   return {
     curves,
     draws,
+    isDeliveryTaken,
     rows,
     notes,
     balances,

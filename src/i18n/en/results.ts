@@ -15,14 +15,17 @@ export const results = {
     meets: '{line}: balance at {pressure} and {air}.',
     meetsNot: '{line}: no balance.',
     endsChoked: '{line}: the line ends where the {element} chokes.',
+    neverPasses: '{line}: no line, the {element} chokes at every pressure here.',
     startsChoked: 'Below the start of the delivery line the {element} chokes: all the air cannot pass it.',
+    taken: 'others take it all',
+    endsTaken: 'The delivery line ends where the other nozzles take all the air.',
     endsHeld: 'A draw that ends early ends where the regulator holds.',
     pressure: 'At the nozzle',
     delivered: 'Delivered',
   },
   airUse: {
     title: 'Air use of this rig at this site',
-    unit: 'Free air to be had for each bore and pressure, {unit}; air taken first is in it. Touch a figure to see why.',
+    unit: 'Free air needed for each bore and pressure, {unit}; air taken first is in it. Touch a figure to see why.',
     bore: 'bore',
     now: 'now',
     cell: '{nozzle} at {pressure}: {air}, {verdict}',
@@ -58,13 +61,15 @@ export const results = {
       'The smallest size class that holds {target} at these nozzles, hoses and site, with {margin} air margin.',
     rentalBarely:
       'The smallest size class that reaches {target} here, barely: {margin} air margin. None in the list holds it with more and an engine that is not short.',
+    rentalEngine:
+      'This size class holds {target} at these nozzles, hoses and site, with {margin} air margin; at this altitude none in the list does so with an engine that is not short.',
     rentalNone: 'No size class up to {largest} reaches {target} with these nozzles and hoses.',
     atSet: 'at {pressure}',
     engineShort:
       'At this altitude its engine is short of about {size} of the power: ask for a turbocharged machine or the next class.',
     engineUnknown:
       'Its engine is not known: a naturally aspirated one is short of about {size} of the power at this altitude. Ask for a turbocharged machine or the next class.',
-    source: 'Generic size classes at 100, 125 or 150 psi; common practice, no source.',
+    source: 'Generic size classes at {lower} or {highest}; common practice, no source.',
     nozzle: 'Largest nozzle',
     newHolds:
       'This compressor holds a new {nozzle} at {target}; one sixteenth worn that falls to {pressure}.',
@@ -72,7 +77,16 @@ export const results = {
     wornHolds: 'This compressor holds a {nozzle} at {target}, and still does one sixteenth worn.',
     wornLargest: 'The largest that still holds one sixteenth worn is a {nozzle}.',
     wornNone: 'None from {smallest} up still holds one sixteenth worn.',
+    newWidest:
+      'This compressor holds a new {nozzle} at {target}; one sixteenth worn it would be wider than its own hose.',
     noneFits: 'This compressor does not hold even a new {nozzle} at {target}.',
+    noneBeside:
+      'With the other nozzles on it, this compressor does not hold even a new {nozzle} at {target}.',
+    noneRig: 'This rig does not hold even a new {nozzle} at {target}. {reason}',
+    noneHeld: 'The regulator is set at {regulator}, under the target: no nozzle sees {target} behind it.',
+    noneHeldOf:
+      'The regulator of nozzle {number} is set at {regulator}, under the target: that nozzle never sees {target}.',
+    noneWider: 'Even a new {nozzle} is wider than its own hose.',
     nozzleOfFirst: 'Asked of nozzle 1, the others as they are.',
     shut: 'When one is shut',
     sees: 'With nozzle {shut} shut, nozzle {number} sees {pressure}.',

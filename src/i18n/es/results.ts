@@ -15,7 +15,10 @@ export const results = {
     meets: '{line}: se equilibra a {pressure} con {air}.',
     meetsNot: '{line}: no llega a equilibrarse.',
     endsChoked: '{line}: la línea termina donde se ahoga el paso por: {element}.',
+    neverPasses: '{line}: no hay línea; a ninguna de estas presiones pasa tanto aire por: {element}.',
     startsChoked: 'Por debajo de donde empieza la línea del compresor no cabe tanto aire por: {element}.',
+    taken: 'las demás se lo llevan',
+    endsTaken: 'La línea del compresor termina donde las demás boquillas se llevan todo el aire.',
     endsHeld: 'Donde una línea se queda corta es que corta el regulador.',
     pressure: 'En la boquilla',
     delivered: 'Da el compresor',
@@ -58,13 +61,15 @@ export const results = {
       'El tamaño más chico que aguanta {target} con estas boquillas y mangueras en esta obra; margen de aire, {margin}.',
     rentalBarely:
       'El tamaño más chico que llega a {target} aquí, y apenas: margen de aire, {margin}. Ninguno de la lista aguanta con más y con motor suficiente.',
+    rentalEngine:
+      'Este tamaño aguanta {target} con estas boquillas y mangueras en esta obra, con {margin} de margen de aire; a esta altitud ninguno de la lista lo hace con motor suficiente.',
     rentalNone: 'Ningún tamaño hasta {largest} llega a {target} con estas boquillas y mangueras.',
     atSet: 'a {pressure}',
     engineShort:
       'A esta altitud le falta al motor cerca de {size} de la potencia: pida una máquina con turbo o el tamaño siguiente.',
     engineUnknown:
       'No se sabe qué motor lleva: a uno sin turbo le falta a esta altitud cerca de {size} de la potencia. Pida una máquina con turbo o el tamaño siguiente.',
-    source: 'Tamaños usuales de alquiler a 100, 125 o 150 psi; costumbre del oficio, sin fuente.',
+    source: 'Tamaños usuales de alquiler a {lower} o {highest}; costumbre del oficio, sin fuente.',
     nozzle: 'La boquilla más grande',
     newHolds:
       'Este compresor aguanta una {nozzle} nueva a {target}; con un dieciseisavo de desgaste cae a {pressure}.',
@@ -73,7 +78,17 @@ export const results = {
     wornHolds: 'Este compresor aguanta una {nozzle} a {target}, y también con un dieciseisavo de desgaste.',
     wornLargest: 'La más grande que aguanta todavía con un dieciseisavo de desgaste es la {nozzle}.',
     wornNone: 'Desde la {smallest}, ninguna aguanta ya con un dieciseisavo de desgaste.',
+    newWidest:
+      'Este compresor aguanta una {nozzle} nueva a {target}; con un dieciseisavo de desgaste ya sería más ancha que su propia manguera.',
     noneFits: 'Este compresor no aguanta a {target} ni una {nozzle} nueva.',
+    noneBeside:
+      'Con las demás boquillas abiertas, este compresor no aguanta a {target} ni una {nozzle} nueva.',
+    noneRig: 'Este equipo no aguanta a {target} ni una {nozzle} nueva. {reason}',
+    noneHeld:
+      'El regulador está a {regulator}, por debajo de lo que se pide: detrás de él ninguna boquilla llega a {target}.',
+    noneHeldOf:
+      'El regulador de la boquilla {number} está a {regulator}, por debajo de lo que se pide: esa boquilla nunca llega a {target}.',
+    noneWider: 'Hasta una {nozzle} nueva es más ancha que su propia manguera.',
     nozzleOfFirst: 'Para la boquilla 1, con las demás como están.',
     shut: 'Cuando se cierra una',
     sees: 'Con la boquilla {shut} cerrada, la {number} ve {pressure}.',

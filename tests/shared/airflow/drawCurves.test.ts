@@ -115,6 +115,45 @@ describe('delivery and draw', () => {
     expect(draws[0]!.verdict).toBe('cannot-run')
   })
 
+  it('ends the delivery where the other outlet takes all there is', () => {
+    const others = makeOutlet({ line: [], nozzle: { boreM: bores[0]! } })
+    const two = makeRig({ airTakenFirst: [], outlets: [makeOutlet({ line: [] }), others] })
+    const { delivery } = trace(two)
+    expect(delivery.isTakenByOthers).toBe(true)
+    // shut, the first sees the manifold at which the other stands alone
+    const alone = solveOperatingPoint(makeRig({ airTakenFirst: [], outlets: [others] }), site).operatingPoint!
+    const last = delivery.points.at(-1)!
+    const manifoldGauge = alone.manifoldPressurePa - ambient.pressurePa
+    expect(Math.abs(last.nozzleGaugePa / manifoldGauge - 1)).toBeLessThan(1e-5)
+    expect(Math.abs(last.freeAirM3S / alone.freeAirM3S - 1)).toBeLessThan(1e-5)
+    expect(trace(makeRig()).delivery.isTakenByOthers).toBe(false)
+  })
+
+  it('show some of the delivery where the whip chokes at every lower pressure', () => {
+    const line = [{ name: 'whip', insideDiameterM: 0.5 * inch, lengthM: 3 }]
+    const compressor = {
+      freeAir: 1600 * cfm,
+      setPressurePa: ambient.pressurePa + 150 * psi,
+      unloadPressurePa: ambient.pressurePa + 170 * psi,
+    }
+    const rig = makeRig({ compressor, outlets: [makeOutlet({ line, nozzle: { boreM: (10 * inch) / 16 } })] })
+    const { delivery, lowestGaugePa, highestGaugePa } = traceDeliveryAndDraw(
+      prepareRig(rig, site),
+      0,
+      [(10 * inch) / 16],
+      30 * psi,
+    )
+    const first = delivery.points[0]!
+    expect(first.nozzleGaugePa).toBeGreaterThan(1.2 * 30 * psi)
+    // it begins where the whip's flow is isothermally sonic: p = G √(R T)
+    const flow = (first.freeAirM3S - 15 * cfm) * ambient.dryAirDensity
+    const sonicPa = (flow / ((Math.PI / 4) * (0.5 * inch) ** 2)) * Math.sqrt(287.05 * 293.15)
+    expect(Math.abs((first.nozzleGaugePa + ambient.pressurePa) / sonicPa - 1)).toBeLessThan(1e-3)
+    const shown = delivery.points.filter(({ nozzleGaugePa }) => nozzleGaugePa <= highestGaugePa)
+    expect(shown.length).toBeGreaterThan(1)
+    expect(lowestGaugePa).toBeLessThan(30 * psi)
+  })
+
   it('show the target and every balance inside the range', () => {
     const traced = trace(makeRig(), 110)
     const shown = [110 * psi, ...traced.draws.map((draw) => draw.operatingPoint!.nozzleGaugePa)]

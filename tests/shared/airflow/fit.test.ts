@@ -3,6 +3,7 @@ import {
   checkPressure,
   findLargestNozzles,
   findSmallestCompressor,
+  limitBore,
   solveOperatingPoint,
   solveWithOutletShut,
   withBore,
@@ -56,7 +57,43 @@ describe('what to rent, and what fits', () => {
     expect(isReached(whenNew!.number + 1)).toBe(false)
     expect(isReached(whenWorn!.number + 1)).toBe(true)
     expect(whenWorn!.number).toBe(whenNew!.number - 1)
-    expect(findLargestNozzles(rig, site, 90 * psi, 0, [8])).toEqual({ whenNew: null, whenWorn: null })
+    expect(findLargestNozzles(rig, site, 90 * psi, 0, [8])).toEqual({
+      whenNew: null,
+      whenWorn: null,
+      obstacle: 'short-of-air',
+    })
+  })
+
+  it('no nozzle is wider than the narrowest hose of its own line, as no limit bore is', () => {
+    const whip = { name: 'whip', insideDiameterM: 0.0127, lengthM: 0.1 }
+    const narrow: Rig = {
+      ...rig,
+      compressor: compressorOf(1600),
+      outlets: [
+        { ...rig.outlets[0]!, line: [whip] },
+        { line: [], nozzle: { boreM: 0.006 } },
+      ],
+    }
+    const numbers = [2, 3, 4, 5, 6, 7, 8, 9, 10, 11, 12]
+    const { whenNew, whenWorn } = findLargestNozzles(narrow, site, 30 * psi, 0, numbers)
+    // by air alone a No. 9 holds behind this 1/2 in whip
+    expect(checkPressure(withBore(narrow, 0, (9 * 0.0254) / 16), site, 101325 + 30 * psi).verdict).toBe(
+      'holds',
+    )
+    expect(limitBore(narrow, site, 101325 + 30 * psi, 0)).toMatchObject({ boreM: 0.0127, limitedBy: 'line' })
+    expect(whenNew).toMatchObject({ number: 8, isWornWiderThanLine: true })
+    expect(whenWorn?.number).toBe(7)
+    expect(findLargestNozzles(narrow, site, 30 * psi, 0, [9]).obstacle).toBe('wider-than-line')
+    // the other outlet's own line is open
+    expect(findLargestNozzles(narrow, site, 30 * psi, 1, numbers).whenNew!.number).toBeGreaterThan(8)
+  })
+
+  it('names what stops even the smallest: a regulator, or a hose that chokes', () => {
+    const held = { ...rig, outlets: [{ ...rig.outlets[0]!, regulatorPa: 101325 + 60 * psi }] }
+    expect(findLargestNozzles(held, site, 90 * psi, 0, [2, 3]).obstacle).toBe('regulator:1')
+    const thin = { name: 'whip', insideDiameterM: 0.003 }
+    const choked = { ...rig, outlets: [{ ...rig.outlets[0]!, line: [thin] }] }
+    expect(findLargestNozzles(choked, site, 90 * psi, 0, [3, 4]).obstacle).toBe('choked:whip')
   })
 
   it('shutting one of two outlets leaves the other alone with all the air', () => {

@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { checkPressure, limitBore, nozzleMassFlow, solveOperatingPoint } from '#shared/airflow/index.ts'
 import type { Rig } from '#shared/airflow/index.ts'
-import { findChokedElement, prepareElement } from '#shared/airflow/line.ts'
+import { findChokedElement, prepareElement, prepareLineAir } from '#shared/airflow/line.ts'
 
 const ambientPa = 101325
 const gauge = (kpa: number) => ambientPa + kpa * 1000
@@ -20,7 +20,9 @@ function heldRig(airLineMm: number): Rig {
 /** The nozzle's flow at 400 kPa, and whether the air line is choked by it at a manifold pressure. */
 function isChokedAt(rig: Rig, manifoldKpa: number): boolean {
   const massFlow = nozzleMassFlow(rig.outlets[0]!.nozzle, gauge(400), site)
-  const line = rig.airLine.map((element) => prepareElement(element, 'air-line', site.airTemperatureK))
+  const line = rig.airLine.map((element) =>
+    prepareElement(element, prepareLineAir(site.airTemperatureK), 'air-line', 0),
+  )
   return findChokedElement(line, massFlow, manifoldKpa * 1000, ambientPa) !== null
 }
 

@@ -14,6 +14,7 @@ import {
   findChokedElement,
   frictionFactor,
   prepareElement,
+  prepareLineAir,
 } from '#shared/airflow/line.ts'
 import { viscosity } from '#shared/airflow/ambient.ts'
 import type { CheckRequest } from '#shared/contracts/check.ts'
@@ -190,7 +191,9 @@ describe('laws of every rig', () => {
       // downwards the last digits are lost near the choke, where p2 no longer follows from p1
       let pressurePa = point.compressorPressurePa
       let steepest = 1
-      for (const element of rig.airLine.map((e) => prepareElement(e, 'line', temperature))) {
+      for (const element of rig.airLine.map((e) =>
+        prepareElement(e, prepareLineAir(temperature), 'line', 0),
+      )) {
         const outletPa = elementOutletPressure(element, airLineFlow, pressurePa)
         const chi = ((airLineFlow * element.chokePerFlow) / outletPa) ** 2
         steepest *= pressurePa / outletPa / (1 - chi)
@@ -209,7 +212,7 @@ describe('laws of every rig', () => {
       const temperature = lineTemperature(rig, site)
       const [given] = rig.airLine
       if (!given) return false
-      const element = prepareElement(given, 'line', temperature)
+      const element = prepareElement(given, prepareLineAir(temperature), 'line', 0)
       const ambientPa = resolveAmbient(site).pressurePa
       for (const part of [1e-4, 0.1, 0.5, 0.9]) {
         const massFlow = (part * ambientPa) / element.chokePerFlow
@@ -448,7 +451,7 @@ function imbalanceByHand(rig: Rig, site: Site, temperature: number, manifoldPa: 
     if (!(Math.abs(entryPa / feedPa - 1) < 1e-6)) return NaN
     total += flowAt(low)
   }
-  const line = rig.airLine.map((element) => prepareElement(element, 'line', temperature))
+  const line = rig.airLine.map((element) => prepareElement(element, prepareLineAir(temperature), 'line', 0))
   if (findChokedElement(line, total, manifoldPa - ambient.pressurePa, ambient.pressurePa)) return NaN
   const compressorPa = marchByHand(rig.airLine, temperature, total, manifoldPa)
   const drawn = total + firstMass(rig, ambient.dryAirDensity)

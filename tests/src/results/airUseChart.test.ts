@@ -72,7 +72,8 @@ describe('the air use table', () => {
   })
 
   it('goes from 4 to 8.5 bar in metric', () => {
-    const panel = mountPanel(AirUseChart, { check: answerForm(makeForm()).check }, { units: 'metric' })
+    const { check } = answerForm(makeForm((form) => (form.target = us('7 bar'))))
+    const panel = mountPanel(AirUseChart, { check }, { units: 'metric' })
     const heads = panel.findAll('thead th').slice(1)
     expect(heads.map((head) => head.text().replace('\u00a0bar', ''))).toEqual([
       '4.0',
@@ -86,6 +87,30 @@ describe('the air use table', () => {
       '8.0',
       '8.5',
     ])
+  })
+
+  it.each([
+    ['150 psi', ['70', '80', '90', '100', '110', '120', '150']],
+    ['30 psi', ['30', '60', '70', '80', '90', '100', '110']],
+    ['95 psi', ['70', '80', '90', '95', '100', '110', '120']],
+    ['101 psi', ['60', '70', '80', '90', '101', '110', '120']],
+  ])('gives a target of %s a column of its own, where it starts', (target, expected) => {
+    const { check } = answerForm(makeForm((form) => (form.target = us(target))))
+    const panel = mountPanel(AirUseChart, { check })
+    const heads = panel.findAll('thead th').slice(1)
+    expect(heads.map((head) => head.text().replace('\u00a0psi', ''))).toEqual(expected)
+    expect(panel.findAll('th.is-target')).toHaveLength(1)
+    const start = panel.get('button[tabindex="0"]').attributes('aria-label')
+    expect(start).toContain(`at ${target.replace(' ', '\u00a0')}`)
+    expect(start).toContain(verdictWords[check.answer.verdict])
+  })
+
+  it('goes back to the target when another is asked for', async () => {
+    const panel = mountPanel(AirUseChart, { check: answerForm(makeForm()).check })
+    await panel.findAll('tbody tr')[0]!.get('button').trigger('click')
+    expect(panel.get('[data-testid=air-use-why]').text()).toContain('at 60')
+    await panel.setProps({ check: answerForm(makeForm((form) => (form.target = us('150 psi')))).check })
+    expect(panel.get('[data-testid=air-use-why]').text()).toContain('at 150')
   })
 
   it('says that only the first nozzle changes where there are two', () => {

@@ -30,6 +30,36 @@ describe('what an hour uses', () => {
     expect(row(panel, 'Fuel').get('.figure').text()).toBe('4.0 gal')
   })
 
+  it('keeps the last whole figure, dimmed, while a field is half typed', async () => {
+    const propsOf = (mediaRate: string) => {
+      const form = makeForm((made) => (made.hour.mediaRate = us(mediaRate)))
+      return { ...answerForm(form), hour: form.hour }
+    }
+    const panel = mountPanel(HourPanel, propsOf('500'))
+    const figure = () => row(panel, 'Media').get('.figure')
+    expect(figure().text()).toMatch(/^500 lb/)
+    expect(figure().classes()).not.toContain('stale')
+    await panel.setProps(propsOf('500 x'))
+    expect(figure().text()).toMatch(/^500 lb/)
+    expect(figure().classes()).toContain('stale')
+    await panel.setProps(propsOf(''))
+    expect(figure().text()).not.toMatch(/^500 lb/)
+    expect(figure().text()).toMatch(/^\d/)
+    expect(figure().classes()).not.toContain('stale')
+  })
+
+  it('has a dash, not the default, for a field that never was whole', () => {
+    const panel = mountHour((form) => {
+      form.hour.mediaRate = us('500 x')
+      form.hour.fullLoadFuel = us('x')
+      form.hour.tank = us('x')
+      form.hour.isWet = true
+    })
+    expect(row(panel, 'Media').get('.figure').text()).toBe('–')
+    expect(row(panel, 'Fuel').get('.figure').text()).toBe('–')
+    expect(row(panel, 'Water for wet blasting').get('.figure').text()).toBe('30 gal')
+  })
+
   it('shows every default as what a blank stands for, with where it comes from', () => {
     const panel = mountHour()
     for (const input of panel.findAll('input:not([type=checkbox])')) {

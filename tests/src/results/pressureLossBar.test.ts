@@ -16,6 +16,13 @@ describe('where the pressure goes', () => {
     expect(Math.abs(total - between)).toBeLessThan(0.05 * names.length)
   })
 
+  it('names a hose in metric as the form does', () => {
+    const { check } = answerForm(makeForm())
+    const panel = mountPanel(PressureLossBar, { check }, { units: 'metric' })
+    // 1 1/4 in of 25.4 mm
+    expect(panel.findAll('dt')[2]!.text()).toBe('Blast hose, 31.75\u00a0mm')
+  })
+
   it('gives the plain remedy: the thin hose one size wider, and what a check with it gains', () => {
     const hose = (bore: string) =>
       answerForm(

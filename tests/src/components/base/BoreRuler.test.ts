@@ -11,6 +11,7 @@ interface Bores {
   newBoreMm: number
   boreMm: number
   limitBoreMm: number | null
+  limitedBy?: 'air' | 'line' | 'regulator' | 'air-line' | null
 }
 
 function drawRuler(bores: Bores, units: UnitSystem = 'us', language: 'en' | 'es' = 'en') {
@@ -87,10 +88,56 @@ describe('the bore ruler', () => {
     expect(label).toBe('Bore ruler: new 3/8 in, now 3/8 in. No bore reaches the target.')
   })
 
-  it('shows no limit where it lies beyond the paper, but says it', () => {
-    const { has, label } = drawRuler({ newBoreMm: noSix, boreMm: noSix, limitBoreMm: 60 })
+  it('names a limit that lies beyond the paper, at its right end', () => {
+    const bores = { newBoreMm: noSix, boreMm: noSix, limitBoreMm: inch }
+    const { wrapper, has, label, number, width } = drawRuler(bores)
     expect([has('.limit-mark'), has('.past'), has('.doubt')]).toEqual([false, false, false])
-    expect(label).toContain('limit 2.362 in')
+    expect(textOf(wrapper.get('.limit-label'))).toBe('limit 1 in')
+    expect(wrapper.get('.limit-label').attributes('text-anchor')).toBe('end')
+    expect(number('.limit-label', 'x')).toBeLessThan(width - 17)
+    expect(has('.limit-arrow')).toBe(true)
+    expect(label).toContain('limit 1 in')
+  })
+
+  it.each([
+    ['air', 'At the limit bore this rig just reaches the target.', true],
+    ['line', 'The limit here is the hose: no bore wider than its own line counts.', false],
+    ['regulator', 'The limit here is the regulator.', true],
+    ['air-line', 'The limit here is the air line, which chokes beyond it.', true],
+    [null, 'It holds at every bore up to 60 mm (2 3/8 in).', false],
+  ] as const)(
+    'says what a limit by %s means, and doubts only one that is not exact',
+    (by, sentence, isDoubtful) => {
+      const bores = { newBoreMm: noSix, boreMm: noSix, limitBoreMm: 10.8, limitedBy: by }
+      const { label, has } = drawRuler(bores)
+      expect(label).toMatch(/^Bore ruler: new 3\/8 in, now 3\/8 in, limit 0\.425 in\. /)
+      expect(label.endsWith(` ${sentence}`)).toBe(true)
+      expect([has('.doubt'), has('.doubt-label')]).toEqual([isDoubtful, isDoubtful])
+    },
+  )
+
+  it('says of a rig that holds every bore that its limit is over the widest', () => {
+    const { wrapper } = drawRuler({ newBoreMm: noSix, boreMm: noSix, limitBoreMm: 60, limitedBy: null })
+    expect(textOf(wrapper.get('.limit-label'))).toBe('limit over 2.362 in')
+  })
+
+  it('writes the limit in a row above new and now, on a paper that is always as high', () => {
+    const limits = [8, 9.6, 10.8, 60, null]
+    const heights = limits.map((limitBoreMm) => {
+      const { wrapper, has, number } = drawRuler({ newBoreMm: noSix, boreMm: 10, limitBoreMm })
+      const height = number('svg', 'height')
+      // a line of 13 px text
+      if (has('.limit-label'))
+        expect(number('.new-label', 'y') - number('.limit-label', 'y')).toBeGreaterThan(13)
+      wrapper.unmount()
+      return height
+    })
+    expect(new Set(heights).size).toBe(1)
+  })
+
+  it('keeps the mark of the bore now where it may not be moved', () => {
+    const { nowX, newX } = drawRuler({ newBoreMm: noSix, boreMm: noSix, limitBoreMm: 10.8 })
+    expect(nowX).toBeCloseTo(newX, 6)
   })
 
   it('draws a limit under the new bore, on the left of it', () => {
@@ -143,5 +190,13 @@ describe('the bore ruler', () => {
     expect(moved).toBeCloseTo((25 / 64) * inch, 9)
     await wrapper.get('[role="slider"]').trigger('keydown', { key: 'ArrowLeft' })
     expect(wrapper.emitted('move')).toHaveLength(1)
+  })
+
+  it('lets no bore be dragged over 60 mm, nor under the new one', async () => {
+    const bores = { newBoreMm: 50, boreMm: 59.5, limitBoreMm: 10.8, isMovable: true }
+    const { wrapper } = mountInApp(BoreRuler, bores, { units: 'metric' })
+    await wrapper.get('[role="slider"]').trigger('keydown', { key: 'End' })
+    await wrapper.get('[role="slider"]').trigger('keydown', { key: 'Home' })
+    expect(wrapper.emitted('move')).toEqual([[60], [50]])
   })
 })
