@@ -114,6 +114,11 @@ describe('delivery and draw', () => {
     expect(panel.text()).toContain('now No. 8: no line, the whip chokes at every pressure here')
   })
 
+  it('shows the whole delivery where there is no draw beside it', () => {
+    const { panel } = mountChart(chokedWhip)
+    expect(options(panel).scales.y.min).toBe(0)
+  })
+
   it('says where the delivery ends because the other nozzle takes all', () => {
     const taken = 'where the other nozzles take all the air'
     const beside = (bore: string) =>
