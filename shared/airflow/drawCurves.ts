@@ -166,10 +166,8 @@ function findChange(low: number, high: number, isSo: (value: number) => boolean)
 
 /** Pressures from the edge of a choke up, close together there: the nozzle's pressure leaves it like a root. */
 function spreadFrom(edgePa: number, topPa: number): number[] {
-  return Array.from(
-    { length: stepsOfFall },
-    (_, step) => edgePa + (topPa - edgePa) * (step / stepsOfFall) ** 2,
-  )
+  const shares = Array.from({ length: stepsOfFall }, (_, step) => (step / stepsOfFall) ** 2)
+  return shares.map((share) => edgePa + (topPa - edgePa) * share)
 }
 
 /** The first element that a march from the compressor cannot pass. */

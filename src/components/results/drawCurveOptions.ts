@@ -61,7 +61,8 @@ export function airRange({ delivery, lines, lowest, highest }: ChartPicture) {
   const drawn = lines.flatMap(({ points }) => points.map(({ y }) => y))
   const met = lines.flatMap(({ operatingPoint }) => (operatingPoint ? [operatingPoint.y] : []))
   const most = Math.max(delivered, ...met, Math.min(Math.max(0, ...drawn), 3.2 * (delivered || Infinity)))
-  const least = Math.min(delivered || most, ...met, ...drawn)
+  // with no draw to compare it with, the delivery is shown down to nothing
+  const least = drawn.length > 0 ? Math.min(delivered || most, ...met, ...drawn) : 0
   return { min: 0.8 * least, max: 1.08 * most || 1 }
 }
 
