@@ -189,7 +189,12 @@ function annotationsOf(picture: ChartPicture, colours: TokenColours, max: number
 
 export function chartOptions(picture: ChartPicture, colours: TokenColours): ChartOptions<'line'> {
   const { min, max } = airRange(picture)
-  const ticks = { color: colours.muted, font: { family: colours.font, size: 12 }, includeBounds: false }
+  const ticks = {
+    color: colours.muted,
+    font: { family: colours.font, size: 12 },
+    includeBounds: false,
+    sampleSize: 2,
+  }
   return {
     animation: false,
     responsive: true,
