@@ -70,6 +70,11 @@ const awkwardRigs: Record<string, (form: CheckForm) => void> = {
   },
 }
 
+async function openFigures(panel: ReturnType<typeof mountChart>['panel']) {
+  panel.get('details').element.open = true
+  await panel.get('details').trigger('toggle')
+}
+
 describe('delivery and draw', () => {
   it('draws the delivery, the new bore, the bore now and one sixteenth more, each in its own dashes', () => {
     const { datasets } = drawn(mountChart().panel)
@@ -87,16 +92,18 @@ describe('delivery and draw', () => {
     expect(datasets.map(({ label }) => label)).toEqual(['delivery', 'now No. 6', '+1/16\u00a0in'])
   })
 
-  it('says in words where the bore now is in balance, as the answer does', () => {
+  it('says in words where the bore now is in balance, as the answer does', async () => {
     const { check, panel } = mountChart()
+    await openFigures(panel)
     const point = check.answer.operatingPoint!
     const psi = (point.outlets[0]!.nozzlePressureKpa / 6.894757293168361).toFixed(0)
     const cfm = (point.freeAirM3Min / 0.028316846592).toFixed(0)
     expect(panel.text()).toContain(`now 25/64\u00a0in: balance at ${psi}\u00a0psi and ${cfm}\u00a0cfm.`)
   })
 
-  it('has the figures of its lines in a table', () => {
+  it('has the figures of its lines in a table', async () => {
     const { panel } = mountChart()
+    await openFigures(panel)
     const { datasets } = drawn(panel)
     const row = panel.findAll('tbody tr').find((found) => found.get('th').text() === '100\u00a0psi')!
     const figures = row.findAll('td').map((cell) => Number(cell.text().replace(/\D/g, '')))
