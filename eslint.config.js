@@ -20,7 +20,7 @@ const otherRooms = {
     message: 'Contracts may use zod and nothing else.',
   },
   checkSchemas: {
-    regex: '(^|/)contracts/(?!limits|cautions)',
+    regex: '(^|/)contracts/(?!limits|cautions|permissions)',
     allowTypeImports: true,
     message: 'Only types, limits and codes: a schema would carry zod into the first script a phone loads.',
   },

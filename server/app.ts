@@ -1,24 +1,15 @@
 import compression from 'compression'
 import express from 'express'
 import type { Express, RequestHandler } from 'express'
-import type { Logger } from 'pino'
 import { readBuiltClient } from './builtClient.ts'
-import type { Config } from './config.ts'
-import type { Database } from './db/client.ts'
+import type { AppContext } from './context.ts'
 import { clientFiles } from './middleware/clientFiles.ts'
 import { errorHandler } from './middleware/errorHandler.ts'
 import { requestLog } from './middleware/requestLog.ts'
 import { securityHeaders } from './middleware/securityHeaders.ts'
 import { makeProblem } from './problems.ts'
-import { checkRoutes } from './routes/check.ts'
-import { healthRoutes } from './routes/health.ts'
-import { openapiRoutes } from './routes/openapi.ts'
-
-export interface AppContext {
-  config: Config
-  database: Database
-  logger: Logger
-}
+import { routes } from './routes/index.ts'
+import { mountRoutes } from './routing/mountRoutes.ts'
 
 const notFound: RequestHandler = (_request, _response, next) =>
   next(makeProblem('not-found', 'There is nothing at this address.'))
@@ -37,9 +28,7 @@ export function createApp(context: AppContext): Express {
   app.use(compression())
 
   app.use('/api', neverStore)
-  app.use('/api/v1/health', healthRoutes(context))
-  app.use('/api/v1/check', checkRoutes(context))
-  app.use('/api/openapi.json', openapiRoutes(context))
+  app.use(mountRoutes(routes, context))
   app.use('/api', notFound)
 
   app.use(clientFiles(client))

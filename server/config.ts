@@ -46,6 +46,11 @@ const environmentSchema = z.object({
     })
     .default(240),
   TRUST_PROXY: trustProxySchema.default(false),
+  SMTP_URL: z
+    .url({ protocol: /^smtps?$/, error: 'must be smtp:// or smtps:// with the mail server' })
+    .optional(),
+  MAIL_FROM: z.string().min(3, 'must be an e-mail address').optional(),
+  BACKUP_DIR: z.string().min(1, 'must be a folder').optional(),
   LOG_LEVEL: z
     .enum(['trace', 'debug', 'info', 'warn', 'error', 'silent'], {
       error: 'must be trace, debug, info, warn, error or silent',
@@ -72,7 +77,17 @@ export interface Config {
   checkRatePerMinute: number | null
   trustProxy: boolean | number | string[]
   logLevel: string
+  /** rounds of bcrypt as a power of two */
+  passwordCost: number
+  /** where mail is handed over; null keeps it here to be read on the own machine */
+  smtpUrl: string | null
+  /** whom mail comes from */
+  mailFrom: string
+  /** where the daily backups go */
+  backupDir: string
 }
+
+const passwordCost = 12
 
 /** What is wrong with the environment, for a person to read: no stack belongs to it. */
 export class ConfigError extends Error {
@@ -119,5 +134,11 @@ export function readConfig(environment: Record<string, string | undefined>): Con
     checkRatePerMinute: CHECK_RATE_PER_MINUTE === 'off' ? null : CHECK_RATE_PER_MINUTE,
     trustProxy: parsed.data.TRUST_PROXY,
     logLevel: parsed.data.LOG_LEVEL ?? defaultLogLevel,
+    passwordCost,
+    smtpUrl: parsed.data.SMTP_URL ?? null,
+    mailFrom:
+      parsed.data.MAIL_FROM ??
+      `Sixteenth <no-reply@${PUBLIC_URL ? new URL(PUBLIC_URL).hostname : 'localhost'}>`,
+    backupDir: resolve(projectRoot, parsed.data.BACKUP_DIR ?? `${DATA_DIR}/backups`),
   }
 }

@@ -2,6 +2,7 @@ import { createServer } from 'node:http'
 import type { AddressInfo } from 'node:net'
 import { createApp } from './app.ts'
 import { ConfigError, readConfig } from './config.ts'
+import { createContext } from './context.ts'
 import { openDatabase } from './db/client.ts'
 import { prepareDemo } from './db/seed.ts'
 import { createLogger } from './middleware/requestLog.ts'
@@ -13,7 +14,7 @@ function start(): void {
   const logger = createLogger(config.logLevel)
   const database = openDatabase(config.dataDir)
   prepareDemo(database, config)
-  const server = createServer(createApp({ config, database, logger }))
+  const server = createServer(createApp(createContext(config, database, logger)))
 
   server.once('error', (error: NodeJS.ErrnoException) => {
     database.close()

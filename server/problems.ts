@@ -1,4 +1,4 @@
-import type { FieldError, Problem, ProblemCode } from '#shared/contracts/problems.ts'
+import type { FieldError, FieldErrorCode, Problem, ProblemCode } from '#shared/contracts/problems.ts'
 
 const problemsByCode = {
   'bad-request': { status: 400, title: 'Bad request' },
@@ -10,6 +10,19 @@ const problemsByCode = {
   'invalid-fields': { status: 422, title: 'Invalid fields' },
   'body-too-deep': { status: 422, title: 'Body too deep' },
   'too-many-requests': { status: 429, title: 'Too many requests' },
+  'not-signed-in': { status: 401, title: 'Not signed in' },
+  'wrong-credentials': { status: 401, title: 'Wrong e-mail or password' },
+  forbidden: { status: 403, title: 'Not allowed' },
+  'cross-origin': { status: 403, title: 'From another site' },
+  'link-not-good': { status: 410, title: 'Link no longer good' },
+  'version-conflict': { status: 409, title: 'Changed meanwhile' },
+  'id-in-use': { status: 409, title: 'Id in use' },
+  'in-use': { status: 409, title: 'In use' },
+  'too-many-records': { status: 409, title: 'Too many records' },
+  'last-admin': { status: 409, title: 'Last admin' },
+  'last-owner': { status: 409, title: 'Last owner' },
+  busy: { status: 503, title: 'Busy' },
+  'storage-unavailable': { status: 503, title: 'Storage unavailable' },
   'internal-error': { status: 500, title: 'Internal error' },
 } as const satisfies Record<ProblemCode, { status: number; title: string }>
 
@@ -21,7 +34,23 @@ export class ProblemError extends Error {
   }
 }
 
+export function statusOf(code: ProblemCode): number {
+  return problemsByCode[code].status
+}
+
 export function makeProblem(code: ProblemCode, detail: string, errors?: FieldError[]): ProblemError {
   const { status, title } = problemsByCode[code]
   return new ProblemError({ type: 'about:blank', title, status, detail, code, ...(errors && { errors }) })
+}
+
+/** One field of the body is wrong in a way that only the database or the session can tell. */
+export function makeFieldProblem(path: string, code: FieldErrorCode, message: string): ProblemError {
+  return makeProblem('invalid-fields', 'One field is not as it should be.', [{ path, code, message }])
+}
+
+/** Somebody else changed the record meanwhile: the refusal carries how it stands now. */
+export function makeVersionConflict(stored: unknown): ProblemError {
+  const error = makeProblem('version-conflict', 'Somebody else has changed this meanwhile.')
+  error.problem.stored = stored
+  return error
 }

@@ -1,12 +1,17 @@
 import { ConfigError } from '../config.ts'
 import type { Config } from '../config.ts'
-import { hasAnySetting, readSetting, writeSetting } from '../services/settings.ts'
+import { readSetting, writeSetting } from '../services/settings.ts'
 import type { Database } from './client.ts'
+import { companies } from './schema/index.ts'
 
 const demoKey = 'demo'
 
 export function holdsDemo(database: Database): boolean {
   return readSetting(database, demoKey) === 'true'
+}
+
+function holdsCompanies({ queries }: Database): boolean {
+  return queries.select({ id: companies.id }).from(companies).limit(1).get() !== undefined
 }
 
 /**
@@ -22,6 +27,6 @@ export function prepareDemo(database: Database, config: Config): void {
     }
     return
   }
-  if (!config.isLoopback || hasAnySetting(database)) return
+  if (!config.isLoopback || holdsCompanies(database) || holdsDemo(database)) return
   writeSetting(database, demoKey, 'true')
 }

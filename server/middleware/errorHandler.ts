@@ -1,20 +1,25 @@
 import type { ErrorRequestHandler } from 'express'
 import type { Logger } from 'pino'
 import { makeProblem, ProblemError } from '../problems.ts'
-import { maxBodyBytes } from './jsonBody.ts'
 
 /** What Express and its body reader refuse by themselves, in our own codes. */
 function translate(error: unknown): ProblemError {
   if (error instanceof ProblemError) return error
-  const { status, type } = (typeof error === 'object' && error !== null ? error : {}) as Record<
+  const { status, type, limit, code } = (typeof error === 'object' && error !== null ? error : {}) as Record<
     string,
     unknown
   >
   if (type === 'entity.parse.failed') return makeProblem('bad-json', 'The body is not valid JSON.')
-  if (status === 413) return makeProblem('body-too-large', `The body is larger than ${maxBodyBytes} bytes.`)
+  if (status === 413) return makeProblem('body-too-large', `The body is larger than ${String(limit)} bytes.`)
   if (status === 415) return makeProblem('wrong-content-type', 'The body must be JSON in UTF-8.')
   if (typeof status === 'number' && status >= 400 && status < 500) {
     return makeProblem('bad-request', 'The request could not be read.')
+  }
+  if (typeof code === 'string' && /^SQLITE_(FULL|READONLY|IOERR|CANTOPEN|BUSY)/.test(code)) {
+    return makeProblem(
+      'storage-unavailable',
+      'This could not be saved: the disk is full or may not be written.',
+    )
   }
   return makeProblem('internal-error', 'Something went wrong on our side. It has been noted.')
 }

@@ -39,10 +39,10 @@ const refuseDeep: RequestHandler = (request, _response, next) => {
 }
 
 /** Reads a JSON body of a sensible size and depth; what is in it is the contract's business. */
-export function jsonBody(): RequestHandler[] {
+export function jsonBody(limit = maxBodyBytes): RequestHandler[] {
   return [
     refuseOtherTypes,
-    express.json({ limit: maxBodyBytes, strict: false, type: () => true, verify: refuseEmpty }),
+    express.json({ limit, strict: false, type: () => true, verify: refuseEmpty }),
     refuseAbsent,
     refuseDeep,
   ]

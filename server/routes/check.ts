@@ -1,19 +1,19 @@
-import { Router } from 'express'
 import { answerCheck } from '#shared/check/answerCheck.ts'
-import { checkRequestSchema } from '#shared/contracts/check.ts'
-import type { AppContext } from '../app.ts'
+import { checkAnswerSchema, checkRequestSchema } from '#shared/contracts/check.ts'
 import { checkRateLimit } from '../middleware/checkRateLimit.ts'
-import { jsonBody } from '../middleware/jsonBody.ts'
-import { methodNotAllowed } from '../middleware/methodNotAllowed.ts'
-import { parseBody } from '../parseBody.ts'
+import { defineRoute } from '../routing/route.ts'
 
-export function checkRoutes({ config }: AppContext): Router {
-  const router = Router()
-  router
-    .route('/')
-    .post(checkRateLimit(config.checkRatePerMinute), ...jsonBody(), (request, response) => {
-      response.json(answerCheck(parseBody(checkRequestSchema, request.body)))
-    })
-    .all(methodNotAllowed('POST'))
-  return router
-}
+export const checkRoutes = [
+  defineRoute({
+    method: 'post',
+    path: '/api/v1/check',
+    access: 'anyone',
+    operationId: 'check',
+    summary: 'Whether a rig at a site holds a nozzle pressure; nothing is stored',
+    body: checkRequestSchema,
+    answer: checkAnswerSchema,
+    problems: ['too-many-requests'],
+    middleware: ({ config }) => [checkRateLimit(config.checkRatePerMinute)],
+    handle: ({ body }) => answerCheck(body),
+  }),
+]

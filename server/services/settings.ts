@@ -15,7 +15,3 @@ export function writeSetting(database: Database, key: string, value: string): vo
     .onConflictDoUpdate({ target: settings.key, set: { value, updatedAt } })
     .run()
 }
-
-export function hasAnySetting(database: Database): boolean {
-  return database.queries.select({ key: settings.key }).from(settings).limit(1).get() !== undefined
-}

@@ -11,17 +11,10 @@ import {
   minUnloadAboveSetKpa,
   snapTo64ths,
 } from './limits.ts'
-import type { Range } from './limits.ts'
-import type { FieldErrorCode } from './problems.ts'
+import { ruleBroken, within } from './records.ts'
 
-const within = ({ min, max }: Range) => z.number().min(min).max(max)
 const nozzleLength = () => within(checkLimits.boreMm).overwrite(snapTo64ths)
 const name = () => z.string().max(maxNameLength)
-
-/** A rule between fields reports its own code of the closed list beside a sentence. */
-function ruleBroken(code: FieldErrorCode, message: string, path: PropertyKey[]) {
-  return { code: 'custom' as const, message, path, params: { code } }
-}
 
 export const siteSchema = z.strictObject({
   altitudeM: within(checkLimits.altitudeM),
@@ -53,24 +46,36 @@ export const compressorSchema = z
         ]),
       )
     }
-    if (compressor.unloadPressureKpa < compressor.setPressureKpa + minUnloadAboveSetKpa) {
-      const message = `unloadPressureKpa must be at least ${minUnloadAboveSetKpa} kPa above setPressureKpa.`
-      context.addIssue(ruleBroken('unload-too-near-set', message, ['unloadPressureKpa']))
-    }
-    const curve = compressor.curve ?? []
-    curve.forEach((point, index) => {
-      const before = curve[index - 1]
-      if (before === undefined) return
-      if (point.pressureKpa <= before.pressureKpa) {
-        const message = 'Each point of the curve must be at a higher pressure than the one before it.'
-        context.addIssue(ruleBroken('curve-pressure-not-rising', message, ['curve', index, 'pressureKpa']))
-      }
-      if (point.freeAirM3Min > before.freeAirM3Min) {
-        const message = 'Free air may not rise with pressure along the curve.'
-        context.addIssue(ruleBroken('curve-free-air-rising', message, ['curve', index, 'freeAirM3Min']))
-      }
-    })
+    checkCompressorRules(compressor, context)
   })
+
+/** What must hold between the fields of a compressor, asked about or saved. */
+export function checkCompressorRules(
+  compressor: {
+    setPressureKpa: number
+    unloadPressureKpa: number | null
+    curve?: { pressureKpa: number; freeAirM3Min: number }[] | undefined
+  },
+  context: z.RefinementCtx,
+): void {
+  const { setPressureKpa, unloadPressureKpa, curve = [] } = compressor
+  if (unloadPressureKpa !== null && unloadPressureKpa < setPressureKpa + minUnloadAboveSetKpa) {
+    const message = `unloadPressureKpa must be at least ${minUnloadAboveSetKpa} kPa above setPressureKpa.`
+    context.addIssue(ruleBroken('unload-too-near-set', message, ['unloadPressureKpa']))
+  }
+  curve.forEach((point, index) => {
+    const before = curve[index - 1]
+    if (before === undefined) return
+    if (point.pressureKpa <= before.pressureKpa) {
+      const message = 'Each point of the curve must be at a higher pressure than the one before it.'
+      context.addIssue(ruleBroken('curve-pressure-not-rising', message, ['curve', index, 'pressureKpa']))
+    }
+    if (point.freeAirM3Min > before.freeAirM3Min) {
+      const message = 'Free air may not rise with pressure along the curve.'
+      context.addIssue(ruleBroken('curve-free-air-rising', message, ['curve', index, 'freeAirM3Min']))
+    }
+  })
+}
 
 export const elementSchema = z.strictObject({
   name: name().optional(),

@@ -44,3 +44,30 @@ export const minUnloadAboveSetKpa = 10
 
 /** A nozzle's length in the contract is the 64th of an inch it stands for; one function for screens and API. */
 export { snapBoreMm as snapTo64ths } from '../units/quantities.ts'
+
+/** What a saved record may contain. */
+export const recordLimits = {
+  name: 60,
+  email: 254,
+  /** characters; more than bytes allow is refused with a word on bytes */
+  passwordShortest: 10,
+  /** bcrypt reads no more of it */
+  passwordMostBytes: 72,
+  pageSize: 100,
+  /** one company's, of one kind */
+  records: 1000,
+  importBytes: 1_000_000,
+  importRows: 500,
+} as const
+
+/** What more a saved rig may contain. */
+export const fleetLimits = {
+  couplings: { min: 0, max: 20 },
+  hoods: { min: 0, max: 7 },
+  dropKpa: { min: 0.1, max: 3500 },
+  mediaRateKgPerH: { min: 1, max: 20_000 },
+  bagMassKg: { min: 1, max: 2000 },
+  fullLoadFuelLPerH: { min: 0.1, max: 500 },
+  waterRateLPerMin: { min: 0.05, max: 200 },
+  tankL: { min: 1, max: 50_000 },
+} as const satisfies Record<string, Range>

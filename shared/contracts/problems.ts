@@ -11,6 +11,19 @@ export const problemCodes = [
   'invalid-fields',
   'body-too-deep',
   'too-many-requests',
+  'not-signed-in',
+  'wrong-credentials',
+  'forbidden',
+  'cross-origin',
+  'link-not-good',
+  'version-conflict',
+  'id-in-use',
+  'in-use',
+  'too-many-records',
+  'last-admin',
+  'last-owner',
+  'busy',
+  'storage-unavailable',
   'internal-error',
 ] as const
 
@@ -30,6 +43,20 @@ export const fieldErrorCodes = [
   'unload-too-near-set',
   'curve-pressure-not-rising',
   'curve-free-air-rising',
+  'bore-now-under-new',
+  'number-and-bore-differ',
+  'measured-in-part',
+  'dates-reversed',
+  'not-an-email',
+  'too-short',
+  'too-common',
+  'not-a-time-zone',
+  'not-a-currency',
+  'unknown-reference',
+  'name-in-use',
+  'wrong-password',
+  'not-a-number',
+  'unknown-column',
   'invalid',
 ] as const
 
@@ -54,6 +81,8 @@ export const problemSchema = z.strictObject({
   detail: z.string(),
   code: z.enum(problemCodes),
   errors: z.array(fieldErrorSchema).max(maxFieldErrors).optional(),
+  /** where a record was changed by somebody else meanwhile: how it stands now */
+  stored: z.unknown().optional(),
 })
 
 export type FieldError = z.infer<typeof fieldErrorSchema>

@@ -76,16 +76,21 @@ describe('the description of the API', () => {
   it('lists every route that answers, with its refusals', async () => {
     const { openapi, paths } = await readDescription()
     expect(openapi).toBe('3.1.0')
-    expect(Object.keys(paths).sort()).toEqual(['/api/v1/check', '/api/v1/health'])
-    for (const [path, methods] of Object.entries(paths)) {
-      for (const method of Object.keys(methods)) {
-        const response = await fetch(server.address + path, { method: method.toUpperCase() })
-        expect([404, 405]).not.toContain(response.status)
-      }
+    const described = Object.entries(paths).flatMap(([path, methods]) =>
+      Object.keys(methods).map((method) => `${method} ${path}`),
+    )
+    expect(described).toContain('post /api/v1/check')
+    for (const route of described) {
+      const [method = '', path = ''] = route.split(' ')
+      const address = server.address + path.replace(/\{\w+\}/g, crypto.randomUUID())
+      const response = await fetch(address, { method: method.toUpperCase() })
+      expect(response.status, route).not.toBe(405)
+      if (!path.includes('{')) expect(response.status, route).not.toBe(404)
     }
     expect(Object.keys(paths['/api/v1/check']?.['post']?.responses ?? {})).toEqual([
       '200',
       '400',
+      '403',
       '413',
       '415',
       '422',

@@ -1,3 +1,4 @@
+import { companies } from '../../server/db/schema/index.ts'
 import { rmSync } from 'node:fs'
 import { join } from 'node:path'
 import BetterSqlite from 'better-sqlite3'
@@ -79,7 +80,19 @@ describe('the demo', () => {
 
   it('stays out of a database that is in use', () => {
     const database = openDatabase(dataDir)
-    writeSetting(database, 'company', 'ours')
+    database.queries
+      .insert(companies)
+      .values({
+        id: crypto.randomUUID(),
+        name: 'Ours',
+        currency: 'USD',
+        language: 'en',
+        timeZone: 'America/Denver',
+        version: 1,
+        creationHash: '',
+        createdAt: new Date().toISOString(),
+      })
+      .run()
     database.close()
     expect(startWith({})).toBe(false)
   })

@@ -1,1 +1,5 @@
-export { settings } from './settings.ts'
+export * from './accounts.ts'
+export * from './audit.ts'
+export * from './emails.ts'
+export * from './fleet.ts'
+export * from './settings.ts'

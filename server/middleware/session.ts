@@ -1,0 +1,38 @@
+import session from 'express-session'
+import type { RequestHandler } from 'express'
+import type { AppContext } from '../context.ts'
+import { SessionStore, sessionIdleMs } from '../services/sessions.ts'
+
+export const sessionCookieName = 'sixteenth'
+declare module 'express-session' {
+  interface SessionData {
+    accountId: string
+    companyId: string | null
+  }
+}
+
+const handlers = new WeakMap<AppContext, RequestHandler>()
+
+/** One session handler for all routes of an application. Nobody has a session before signing in. */
+export function sessionHandler(context: AppContext): RequestHandler {
+  const existing = handlers.get(context)
+  if (existing) return existing
+  const handler = session({
+    name: sessionCookieName,
+    secret: context.sessionSecret,
+    store: new SessionStore(context),
+    resave: false,
+    saveUninitialized: false,
+    rolling: true,
+    proxy: context.config.trustProxy !== false,
+    cookie: {
+      httpOnly: true,
+      sameSite: 'lax',
+      secure: context.publicUrl.startsWith('https:'),
+      path: '/',
+      maxAge: sessionIdleMs,
+    },
+  })
+  handlers.set(context, handler)
+  return handler
+}
