@@ -5,16 +5,23 @@ import { ConfigError, readConfig } from './config.ts'
 import { createContext } from './context.ts'
 import { openDatabase } from './db/client.ts'
 import { prepareDemo } from './db/seed.ts'
+import { prepareDrain } from './drain.ts'
+import { startMailer } from './email/mailer.ts'
 import { createLogger } from './middleware/requestLog.ts'
+import { startUpkeep } from './upkeep.ts'
 
-const graceMs = 5000
+/** how long requests may take to finish once we are told to end, and then how long the rest may take */
+const graceMs = 4500
+const closingMs = 400
 
 function start(): void {
   const config = readConfig(process.env)
   const logger = createLogger(config.logLevel)
   const database = openDatabase(config.dataDir)
   prepareDemo(database, config)
-  const server = createServer(createApp(createContext(config, database, logger)))
+  const context = createContext(config, database, logger)
+  const server = createServer(createApp(context))
+  const drain = prepareDrain(server)
 
   server.once('error', (error: NodeJS.ErrnoException) => {
     database.close()
@@ -23,20 +30,27 @@ function start(): void {
   server.listen(config.port, config.host, () => {
     const { port } = server.address() as AddressInfo
     const host = config.host.includes(':') ? `[${config.host}]` : config.host
+    const upkeep = startUpkeep(context)
+    const mailer = startMailer(context)
     console.log(`Sixteenth is at http://${host}:${port}`)
-  })
 
-  // A terminal signals every process of ours, and the start script passes its own on: the second one is no news.
-  let isStopping = false
-  function shutDown(): void {
-    if (isStopping) return
-    isStopping = true
-    setTimeout(() => server.closeAllConnections(), graceMs).unref()
-    server.close(() => database.close())
-    server.closeIdleConnections()
-  }
-  process.on('SIGTERM', shutDown)
-  process.on('SIGINT', shutDown)
+    async function shutDown(): Promise<void> {
+      upkeep.stop()
+      await drain(graceMs)
+      setTimeout(() => process.exit(0), closingMs).unref()
+      await Promise.allSettled([mailer.stop(), context.passwords.close()])
+      database.close()
+    }
+    // A terminal signals every process of ours, and the start script passes its own on: the second one is no news.
+    let isStopping = false
+    for (const signal of ['SIGTERM', 'SIGINT'] as const) {
+      process.on(signal, () => {
+        if (isStopping) return
+        isStopping = true
+        void shutDown()
+      })
+    }
+  })
 }
 
 function explainListenError(error: NodeJS.ErrnoException, host: string, port: number): string {

@@ -54,3 +54,21 @@ export function makeVersionConflict(stored: unknown): ProblemError {
   error.problem.stored = stored
   return error
 }
+
+/** A refusal that passes, and when to come again. */
+export class PassingProblemError extends ProblemError {
+  constructor(
+    refusal: ProblemError,
+    readonly retryAfterS: number,
+  ) {
+    super(refusal.problem)
+  }
+}
+
+export function makePassingProblem(
+  code: Extract<ProblemCode, 'busy' | 'too-many-requests'>,
+  detail: string,
+  retryAfterS: number,
+): PassingProblemError {
+  return new PassingProblemError(makeProblem(code, detail), Math.max(1, Math.ceil(retryAfterS)))
+}

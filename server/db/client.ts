@@ -8,7 +8,7 @@ import { projectRoot } from '../config.ts'
 import * as schema from './schema/index.ts'
 
 const busyTimeoutMs = 5000
-const defaultMigrationsFolder = join(projectRoot, 'migrations')
+export const defaultMigrationsFolder = join(projectRoot, 'migrations')
 export const databaseFileName = 'sixteenth.sqlite'
 
 export type Queries = BetterSQLite3Database<typeof schema>
@@ -33,6 +33,8 @@ export function openDatabase(dataDir: string, migrationsFolder = defaultMigratio
     connection.pragma('journal_mode = WAL')
     // What was acknowledged is on the disk, whatever happens to the machine.
     connection.pragma('synchronous = FULL')
+    // What is deleted or blanked, a mail's link among it, is not left lying in a free page.
+    connection.pragma('secure_delete = ON')
     connection.pragma('foreign_keys = ON')
     connection.pragma(`busy_timeout = ${busyTimeoutMs}`)
     const queries = drizzle(connection, { schema })

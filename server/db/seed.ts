@@ -1,5 +1,6 @@
 import { ConfigError } from '../config.ts'
 import type { Config } from '../config.ts'
+import { seedDemo } from '../demo/seedDemo.ts'
 import { readSetting, writeSetting } from '../services/settings.ts'
 import type { Database } from './client.ts'
 import { companies } from './schema/index.ts'
@@ -18,7 +19,7 @@ function holdsCompanies({ queries }: Database): boolean {
  * Fills an empty database with the demo, on the own machine only. In production the demo, whose accounts anyone
  * knows, may not even be there.
  */
-export function prepareDemo(database: Database, config: Config): void {
+export function prepareDemo(database: Database, config: Config, now = new Date()): void {
   if (config.isProduction) {
     if (holdsDemo(database)) {
       throw new ConfigError([
@@ -28,5 +29,8 @@ export function prepareDemo(database: Database, config: Config): void {
     return
   }
   if (!config.isLoopback || holdsCompanies(database) || holdsDemo(database)) return
-  writeSetting(database, demoKey, 'true')
+  database.transact(() => {
+    writeSetting(database, demoKey, 'true')
+    seedDemo(database, now)
+  })
 }

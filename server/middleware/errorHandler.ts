@@ -1,11 +1,12 @@
 import type { ErrorRequestHandler } from 'express'
 import type { Logger } from 'pino'
-import { makeProblem, ProblemError } from '../problems.ts'
+import { isStorageFailure } from '../db/storageFailure.ts'
+import { makeProblem, PassingProblemError, ProblemError } from '../problems.ts'
 
 /** What Express and its body reader refuse by themselves, in our own codes. */
 function translate(error: unknown): ProblemError {
   if (error instanceof ProblemError) return error
-  const { status, type, limit, code } = (typeof error === 'object' && error !== null ? error : {}) as Record<
+  const { status, type, limit } = (typeof error === 'object' && error !== null ? error : {}) as Record<
     string,
     unknown
   >
@@ -15,7 +16,7 @@ function translate(error: unknown): ProblemError {
   if (typeof status === 'number' && status >= 400 && status < 500) {
     return makeProblem('bad-request', 'The request could not be read.')
   }
-  if (typeof code === 'string' && /^SQLITE_(FULL|READONLY|IOERR|CANTOPEN|BUSY)/.test(code)) {
+  if (isStorageFailure(error)) {
     return makeProblem(
       'storage-unavailable',
       'This could not be saved: the disk is full or may not be written.',
@@ -29,6 +30,7 @@ export function errorHandler(logger: Logger): ErrorRequestHandler {
     const { problem } = translate(error)
     if (problem.status >= 500) logger.error({ err: error }, 'unexpected error')
     if (response.headersSent) return next(error)
+    if (error instanceof PassingProblemError) response.set('Retry-After', String(error.retryAfterS))
     response.status(problem.status).type('application/problem+json').send(JSON.stringify(problem))
   }
 }

@@ -17,22 +17,27 @@ const handlers = new WeakMap<AppContext, RequestHandler>()
 export function sessionHandler(context: AppContext): RequestHandler {
   const existing = handlers.get(context)
   if (existing) return existing
-  const handler = session({
+  const isSecure = context.publicUrl.startsWith('https:')
+  const keep = session({
     name: sessionCookieName,
     secret: context.sessionSecret,
     store: new SessionStore(context),
     resave: false,
     saveUninitialized: false,
     rolling: true,
-    proxy: context.config.trustProxy !== false,
     cookie: {
       httpOnly: true,
       sameSite: 'lax',
-      secure: context.publicUrl.startsWith('https:'),
+      secure: isSecure,
       path: '/',
       maxAge: sessionIdleMs,
     },
   })
+  // We speak plain HTTP to whatever ends the TLS before us: the address people type says whether theirs is secure.
+  const handler: RequestHandler = (request, response, next) => {
+    if (isSecure) Object.defineProperty(request, 'secure', { value: true })
+    keep(request, response, next)
+  }
   handlers.set(context, handler)
   return handler
 }

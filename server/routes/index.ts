@@ -2,8 +2,19 @@ import type { RouteSpec } from '../routing/route.ts'
 import { describeApi } from '../routing/describeApi.ts'
 import { defineRoute } from '../routing/route.ts'
 import { z } from 'zod'
+import { accountRoutes } from './accounts.ts'
+import { auditRoutes } from './audit.ts'
 import { checkRoutes } from './check.ts'
+import { companyRoutes } from './companies.ts'
+import { compressorRoutes } from './compressors.ts'
+import { exportRoutes } from './exports.ts'
 import { healthRoutes } from './health.ts'
+import { importRoutes } from './imports.ts'
+import { invitationRoutes } from './invitations.ts'
+import { mailRoutes } from './mails.ts'
+import { peopleRoutes } from './people.ts'
+import { rigRoutes } from './rigs.ts'
+import { siteRoutes } from './sites.ts'
 
 let description: object | undefined
 
@@ -18,4 +29,19 @@ const openapiRoute = defineRoute({
 })
 
 /** Every route there is. */
-export const routes: readonly RouteSpec[] = [...healthRoutes, ...checkRoutes, openapiRoute]
+export const routes: readonly RouteSpec[] = [
+  ...healthRoutes,
+  ...checkRoutes,
+  ...accountRoutes,
+  ...companyRoutes,
+  ...importRoutes,
+  ...compressorRoutes,
+  ...siteRoutes,
+  ...rigRoutes,
+  ...exportRoutes,
+  ...auditRoutes,
+  ...invitationRoutes,
+  ...mailRoutes,
+  ...peopleRoutes,
+  openapiRoute,
+]

@@ -42,13 +42,13 @@ function describeSchemas(named: ReadonlyMap<z.ZodType, string>): Record<string, 
 
 /** Every refusal that a route of its kind may give, and its own. */
 function refusalsOf(spec: RouteSpec): number[] {
-  const codes: ProblemCode[] = [...(spec.problems ?? [])]
+  // Whatever stands in a query that a route does not know is refused.
+  const codes: ProblemCode[] = ['invalid-fields', ...(spec.problems ?? [])]
   if (spec.access !== 'anyone' && spec.access !== 'visitor') codes.push('not-signed-in')
   if (!['anyone', 'visitor', 'signed-in'].includes(spec.access)) codes.push('forbidden')
   if (spec.method !== 'get') codes.push('cross-origin')
   if (spec.params) codes.push('not-found')
-  if (spec.query) codes.push('invalid-fields')
-  if (spec.body) codes.push('bad-json', 'body-too-large', 'wrong-content-type', 'invalid-fields')
+  if (spec.body) codes.push('bad-json', 'body-too-large', 'wrong-content-type')
   return [...new Set(codes.map(statusOf))].sort((one, other) => one - other)
 }
 

@@ -69,7 +69,8 @@ function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
     ...(spec.middleware?.(context) ?? []),
     ...(readsSession ? [sessionHandler(context)] : []),
     guard,
-    ...(spec.body ? jsonBody(spec.maxBodyBytes) : []),
+    // A body may take its time to arrive, and roles be taken away meanwhile.
+    ...(spec.body ? [...jsonBody(spec.maxBodyBytes), guard] : []),
     answerCall(spec, context),
   ]
 }

@@ -4,6 +4,7 @@ import type { Actor, SignedIn } from '../actor.ts'
 import type { AppContext } from '../context.ts'
 import type { Database } from '../db/client.ts'
 import { accounts, memberships } from '../db/schema/index.ts'
+import { writeIfPossible } from '../db/storageFailure.ts'
 
 /** who was seen is written down no more often than this */
 const seenEveryMs = 5 * 60_000
@@ -42,11 +43,13 @@ function findCaller(database: Database, accountId: string, companyId: string | n
 function noteSeen({ database, now }: AppContext, membershipId: string, lastSeenAt: string | null): void {
   const at = now()
   if (lastSeenAt !== null && lastSeenAt > new Date(at.getTime() - seenEveryMs).toISOString()) return
-  database.queries
-    .update(memberships)
-    .set({ lastSeenAt: at.toISOString() })
-    .where(eq(memberships.id, membershipId))
-    .run()
+  writeIfPossible(() => {
+    database.queries
+      .update(memberships)
+      .set({ lastSeenAt: at.toISOString() })
+      .where(eq(memberships.id, membershipId))
+      .run()
+  })
 }
 
 /** Who asks, as the database has them now: roles are never remembered in a session. */

@@ -5,6 +5,7 @@ import { and, eq, lt, ne, sql } from 'drizzle-orm'
 import type { AppContext } from '../context.ts'
 import type { Database, Writer } from '../db/client.ts'
 import { sessions } from '../db/schema/index.ts'
+import { writeIfPossible } from '../db/storageFailure.ts'
 
 /** forgotten on a device that nobody uses for so long */
 export const sessionIdleMs = 14 * 24 * 3600_000
@@ -52,7 +53,9 @@ export class SessionStore extends Store {
       if (row.expiresAt > now.toISOString() && row.createdAt > oldest) {
         return JSON.parse(row.data) as SessionData
       }
-      this.prepared.destroy.run({ idHash })
+      writeIfPossible(() => {
+        this.prepared.destroy.run({ idHash })
+      })
       return null
     })
   }
@@ -89,11 +92,13 @@ export class SessionStore extends Store {
       const row = this.prepared.find.get({ idHash })
       if (!row || row.lastUsedAt > justNow) return
       const expiresAt = new Date(now.getTime() + sessionIdleMs).toISOString()
-      this.context.database.queries
-        .update(sessions)
-        .set({ lastUsedAt: now.toISOString(), expiresAt })
-        .where(eq(sessions.idHash, idHash))
-        .run()
+      writeIfPossible(() => {
+        this.context.database.queries
+          .update(sessions)
+          .set({ lastUsedAt: now.toISOString(), expiresAt })
+          .where(eq(sessions.idHash, idHash))
+          .run()
+      })
     })
   }
 

@@ -3,10 +3,14 @@ import { recordLimits } from './limits.ts'
 import { roles } from './permissions.ts'
 import { emailSchema, idSchema, languageSchema, nameSchema, versionSchema } from './records.ts'
 
-/** A new password. Whether it is a common one only the server tells, which has the list. */
-export const newPasswordSchema = z
+/** A password as somebody typed it: any text may be wrong. An accented letter is one, whatever keyboard it is from. */
+const typedPasswordSchema = z
   .string()
   .max(1000)
+  .overwrite((text) => text.normalize('NFC'))
+
+/** A new password. Whether it is a common one only the server tells, which has the list. */
+export const newPasswordSchema = typedPasswordSchema
   .refine((text) => [...text].length >= recordLimits.passwordShortest, {
     error: `A password has at least ${recordLimits.passwordShortest} characters.`,
     params: { code: 'too-short' },
@@ -25,8 +29,6 @@ function utf8Length(text: string): number {
   return length
 }
 
-/** A password as somebody typed it at sign-in; any text may be wrong. */
-const typedPasswordSchema = z.string().max(1000)
 export const tokenSchema = z.string().min(1).max(200)
 export const rolesSchema = z
   .array(z.enum(roles))

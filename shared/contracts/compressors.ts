@@ -1,7 +1,15 @@
 import { z } from 'zod'
 import { curvePointSchema, checkCompressorRules } from './check.ts'
 import { checkLimits, fleetLimits, maxCurvePoints } from './limits.ts'
-import { idSchema, localDateSchema, nameSchema, ruleBroken, versionSchema, within } from './records.ts'
+import {
+  idSchema,
+  localDateSchema,
+  nameSchema,
+  pageOf,
+  ruleBroken,
+  versionSchema,
+  within,
+} from './records.ts'
 
 /** A compressor as its plate and its keeper say; null stands for the default of the check. Pressures are gauge. */
 const compressorFields = {
@@ -56,6 +64,7 @@ export const recordFields = {
   updatedBy: z.string(),
 }
 export const compressorRecordSchema = z.strictObject({ ...compressorFields, ...recordFields })
+export const compressorPageSchema = pageOf(compressorRecordSchema)
 
 export type CompressorProfile = z.infer<typeof compressorProfileSchema>
 export type NewCompressor = z.infer<typeof newCompressorSchema>

@@ -34,7 +34,7 @@ export const nameSchema = lineOfText(recordLimits.name)
 
 /** A day on somebody's calendar, such as 2026-05-03. */
 export const localDateSchema = z.iso
-  .date({ error: 'This must be a date such as 2026-05-03.' })
+  .date({ error: 'This must be a date such as 2026-05-03.', abort: true })
   .refine((date) => date >= '1990-01-01' && date <= '2199-12-31', {
     error: 'This must be a date from 1990 to 2199.',
     params: { code: 'invalid' },
@@ -63,3 +63,6 @@ export const pageQuerySchema = z.strictObject({
 
 /** A change names the version it was made on. */
 export const versionedSchema = z.strictObject({ version: versionSchema })
+
+/** A deletion has no body: its version stands in the address. */
+export const versionQuerySchema = z.strictObject({ version: z.coerce.number().pipe(versionSchema) })

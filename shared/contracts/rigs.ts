@@ -105,13 +105,11 @@ export const newRigSchema = z.strictObject({ ...rigFields, id: idSchema })
 export const rigChangeSchema = z.strictObject({ ...rigFields, version: versionSchema })
 export const rigRecordSchema = z.strictObject({ ...rigFields, ...recordFields })
 
-/** One line of the list. */
+/** One line of the list, kept short: a page of a hundred loads at once on a bad connection. */
 export const rigSummarySchema = z.strictObject({
   id: z.string(),
   name: z.string(),
   version: z.number().int(),
-  compressorId: z.string().nullable(),
-  siteId: z.string().nullable(),
   isArchived: z.boolean(),
   updatedAt: z.string(),
 })

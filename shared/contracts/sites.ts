@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { timeZoneSchema } from './accounts.ts'
 import { recordFields } from './compressors.ts'
 import { checkLimits } from './limits.ts'
-import { idSchema, nameSchema, versionSchema, within } from './records.ts'
+import { idSchema, nameSchema, pageOf, versionSchema, within } from './records.ts'
 
 const siteFields = {
   name: nameSchema,
@@ -17,6 +17,7 @@ export const siteProfileSchema = z.strictObject(siteFields)
 export const newSiteSchema = z.strictObject({ ...siteFields, id: idSchema })
 export const siteChangeSchema = z.strictObject({ ...siteFields, version: versionSchema })
 export const siteRecordSchema = z.strictObject({ ...siteFields, ...recordFields })
+export const sitePageSchema = pageOf(siteRecordSchema)
 
 export type SiteProfile = z.infer<typeof siteProfileSchema>
 export type NewSite = z.infer<typeof newSiteSchema>

@@ -20,7 +20,9 @@ export interface TestPerson {
   ask(method: string, path: string, body?: unknown): Promise<Response>
 }
 
-export function makeCompany({ database }: RunningServer, overrides: Partial<TestCompany> = {}): TestCompany {
+type Data = Pick<RunningServer, 'database' | 'context' | 'address'>
+
+export function makeCompany({ database }: Data, overrides: Partial<TestCompany> = {}): TestCompany {
   const company = { id: randomUUID(), name: 'Ridge Line Blasting', ...overrides }
   database.queries
     .insert(companies)
@@ -39,7 +41,7 @@ export function makeCompany({ database }: RunningServer, overrides: Partial<Test
 
 /** A person with these roles, straight in the database, since signing in is tested where it belongs. */
 export function makePerson(
-  server: RunningServer,
+  server: Data,
   company: TestCompany,
   roles: readonly Role[] = everyRole,
   overrides: { name?: string; email?: string; passwordHash?: string } = {},

@@ -98,5 +98,6 @@ export const rigDays = sqliteTable(
       foreignColumns: [compressors.companyId, compressors.id],
     }),
     foreignKey({ columns: [table.companyId, table.siteId], foreignColumns: [sites.companyId, sites.id] }),
+    index('rig_days_date').on(table.companyId, table.localDate),
   ],
 )

@@ -1,0 +1,1 @@
+CREATE INDEX `rig_days_date` ON `rig_days` (`company_id`,`local_date`);

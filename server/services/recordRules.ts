@@ -1,0 +1,32 @@
+import { recordLimits } from '#shared/contracts/limits.ts'
+import type { FieldError } from '#shared/contracts/problems.ts'
+import { makeProblem } from '../problems.ts'
+import type { RecordRow } from './recordQueries.ts'
+
+/** Two names that differ only in capitals are one to a crew. */
+export function foldName(name: string): string {
+  return name.normalize('NFC').toLowerCase()
+}
+
+export function refuseFaults(faults: FieldError[]): void {
+  if (faults.length === 0) return
+  const count = faults.length === 1 ? 'One field is' : `${faults.length} fields are`
+  throw makeProblem('invalid-fields', `${count} not as they should be.`, faults)
+}
+
+export function findNameFault(
+  noun: string,
+  taken: Pick<RecordRow, 'id' | 'name' | 'archivedAt'>[],
+  { id, name }: { id: string; name: string },
+): FieldError[] {
+  const folded = foldName(name)
+  const other = taken.find((one) => one.id !== id && foldName(one.name) === folded)
+  if (!other) return []
+  const which = other.archivedAt === null ? 'Another' : 'An archived'
+  return [{ path: '/name', code: 'name-in-use', message: `${which} ${noun} is called “${other.name}”.` }]
+}
+
+export function refuseTooMany(noun: string, count: number): void {
+  if (count < recordLimits.records) return
+  throw makeProblem('too-many-records', `A company has at most ${recordLimits.records} ${noun}s.`)
+}

@@ -1,0 +1,43 @@
+import { parse } from 'csv-parse/sync'
+import fc from 'fast-check'
+import { describe, expect, it } from 'vitest'
+import { csvCell, csvLine } from '../../server/csv.ts'
+
+describe('a cell of a CSV file', () => {
+  it.each(['=1+1', '+cmd', '-2+3', '@SUM(A1)', '\tx', '\rx', '-', '=', '-1;2', '+1 555 0100'])(
+    'that a spreadsheet would run as a formula is made a text: %j',
+    (text) => {
+      const [[cell] = []] = parse(csvLine([text])) as string[][]
+      expect(cell).toBe(`'${text}`)
+    },
+  )
+
+  it.each([-2, 0, 3.5, -1e-7, '-2.5', '+3', '-.5', '-1e21'])('that is a number stays one: %j', (value) => {
+    expect(csvCell(value)).toBe(String(value))
+  })
+
+  // RFC 4180, section 2, rules 5 to 7.
+  it.each([
+    ['a,b', '"a,b"'],
+    ['say "hi"', '"say ""hi"""'],
+    ['two\r\nlines', '"two\r\nlines"'],
+    ['plain', 'plain'],
+    ['', ''],
+  ])('is quoted as RFC 4180 has it: %j', (text, cell) => {
+    expect(csvCell(text)).toBe(cell)
+  })
+
+  it('is empty where there is nothing', () => {
+    expect(csvLine([null, undefined, true])).toBe(',,true\r\n')
+  })
+
+  it('comes back from a reader of CSV as it was, whatever it holds', () => {
+    const text = fc.string({ unit: 'grapheme' }).filter((value) => !/^[=+\-@\t\r]/.test(value))
+    fc.assert(
+      fc.property(fc.array(text, { minLength: 2, maxLength: 5 }), (cells) => {
+        expect(parse(csvLine(cells), { recordDelimiter: '\r\n' })).toEqual([cells])
+      }),
+      { seed: 16, numRuns: 2000 },
+    )
+  })
+})
