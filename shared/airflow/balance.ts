@@ -3,7 +3,7 @@ import type { Delivery } from './compressor.ts'
 import { elementOutletPressure, marchBack, restartMarch, startMarch } from './line.ts'
 import type { LineFlow, March } from './line.ts'
 import { criticalFlowFunction } from './nozzle.ts'
-import { marchOutlet, outletMassFlow } from './preparedRig.ts'
+import { marchOutlet, outletMassFlow, roughPressurePerFlow } from './preparedRig.ts'
 import type { PreparedRig } from './preparedRig.ts'
 import { findRoot } from './rootFinding.ts'
 
@@ -86,6 +86,8 @@ interface RigSearch {
   origin: number
   /** ambient pressure where x is a gauge pressure, 0 where it is a flow */
   offset: number
+  /** of the imbalance, a part of full load, over x */
+  leastSlope: number
 }
 
 /** One variable, chords through the last two marches, the compressor met exactly: see meetDelivery and findRoot. */
@@ -137,20 +139,9 @@ function balance(rig: PreparedRig, search: RigSearch) {
     residualTolerance: imbalanceTolerance,
     zeroTolerance: roundingTolerance,
     offset: search.offset,
+    leastSlope: search.leastSlope,
   })
   return { state: best, marches: root.evaluations }
-}
-
-/**
- * Compressor pressure over flow with the only nozzle sonic, Pa s/kg: every pressure then stands nearly in proportion to
- * the flow, and an element of ordinary friction adds to the square of it.
- */
-function roughPressurePerFlow({ outlets, airLine }: PreparedRig): number {
-  const { nozzle, line } = outlets[0]!
-  let square = (nozzle.conductance * criticalFlowFunction) ** -2
-  for (const element of line) square += element.roughSquare
-  for (const element of airLine) square += element.roughSquare
-  return Math.sqrt(square)
 }
 
 /** One outlet: its flow is the variable, the nozzle pressure and every pressure before it follow. */
@@ -173,6 +164,8 @@ function balanceOneOutlet(rig: PreparedRig): Balance {
     guess: Math.min(high, meetDelivery(delivery, firstMassFlow, 0, 1, 0, roughPressurePerFlow(rig))),
     origin: 0,
     offset: 0,
+    // a pressure never falls where a flow rises, nor does a delivery rise with the pressure
+    leastSlope: 1 / delivery.massFlows[delivery.massFlows.length - 2]!,
   })
   if (state.manifoldGaugePa > outlet.regulatorGaugePa) {
     return balanceHeld(rig, [outletMassFlow(outlet, outlet.regulatorGaugePa, NaN)], marches)
@@ -279,6 +272,7 @@ function balanceManifold(rig: PreparedRig): Balance {
     guess: meetDelivery(delivery, firstMassFlow, 0, conductance * criticalFlowFunction, 0, 1) - ambientPa,
     origin: -ambientPa,
     offset: ambientPa,
+    leastSlope: 0,
   })
   feedOutlets(rig, state.manifoldGaugePa, flows)
   marchOutlets(rig, flows.massFlows, march)

@@ -3,7 +3,7 @@ import type { Reason } from './operatingPoint.ts'
 import { requireTarget } from './pressureCheck.ts'
 import type { TargetTrial } from './pressureCheck.ts'
 import { prepareRig } from './preparedRig.ts'
-import type { PreparedRig } from './preparedRig.ts'
+import type { PreparedOutlet, PreparedRig } from './preparedRig.ts'
 import type { Rig, Site } from './rig.ts'
 import { findRoot } from './rootFinding.ts'
 
@@ -18,6 +18,28 @@ export interface LimitBore {
   /** what stops a larger bore; null where the range of bores ends first */
   limitedBy: 'air' | 'line' | 'regulator' | 'air-line' | null
   reason: Reason | null
+}
+
+/** A bore squared that was tried, m², and how far past the edge it was. */
+interface Trial {
+  square: number
+  excess: number
+}
+
+function edgeOfChord(a: Trial, b: Trial): number {
+  return (a.square * b.excess - b.square * a.excess) / (b.excess - a.excess)
+}
+
+/**
+ * Where three bores behind a choke point to: the square of the bore is a parabola of how far the air line is from its
+ * choke, which is the root of the excess. A held flow makes the parabola, one that goes with the pressure the straight
+ * line.
+ */
+function edgeOfChoke(reached: Trial[]): number {
+  const [a, b, c] = reached.map(({ square, excess }) => ({ square, slack: Math.sqrt(-excess) }))
+  const ab = (a!.square * b!.slack - b!.square * a!.slack) / (b!.slack - a!.slack)
+  const bc = (b!.square * c!.slack - c!.square * b!.slack) / (c!.slack - b!.slack)
+  return (ab * c!.slack - bc * a!.slack) / (c!.slack - a!.slack)
 }
 
 /** The limit bore of a rig already prepared; see limitBore. */
@@ -49,17 +71,30 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
   rig.outlets.forEach((other, i) => {
     if (i !== outletIndex) left -= massFlowAtGauge(other.nozzle, targetGaugePa)
   })
-  let earlierSquare = smallestBoreM ** 2
-  let earlierExcess = least.excess
+  const behindChoke: Trial[] = []
+  let isBehindChoke = false
+  let earlier: Trial = { square: smallestBoreM ** 2, excess: least.excess }
+  let missed: Trial | null = null
+  let ahead = Infinity
   const root = findRoot({
-    evaluate: (square) => requireAt(square).excess,
+    evaluate(square) {
+      const { obstacle, reason, excess } = requireAt(square)
+      isBehindChoke = obstacle === 'air-line' && reason === null
+      return excess
+    },
     propose(square, excess) {
-      const step = square - earlierSquare
-      // past the edge of an obstacle that begins with a jump: from afar halve, from nearby fall back a little
-      if (step > 0 && excess > -earlierExcess) return step > 0.01 * square ? NaN : square - 0.02 * step
-      const next = square - (excess * step) / (excess - earlierExcess)
-      earlierSquare = square
-      earlierExcess = excess
+      const trial = { square, excess }
+      const earlierMiss = missed
+      if (excess >= 0) missed = trial
+      // past the edge of an obstacle that begins with a jump: where the bores within it pointed, or the ones past it
+      if (square > earlier.square && excess > -earlier.excess) {
+        if (ahead < square) return ahead
+        return earlierMiss ? edgeOfChord(earlierMiss, trial) : NaN
+      }
+      let next = edgeOfChord(earlier, trial)
+      if (isBehindChoke && behindChoke.push(trial) > 2) next = edgeOfChoke(behindChoke.slice(-3))
+      if (excess < 0) ahead = next
+      earlier = trial
       return next
     },
     low: smallestBoreM ** 2,
@@ -76,6 +111,34 @@ export function limitBorePrepared(rig: PreparedRig, targetGaugePa: number, outle
     limitedBy: requireAt(square * (1 + 4e-9)).obstacle ?? 'air',
     reason: null,
   }
+}
+
+function areAlike(a: PreparedOutlet, b: PreparedOutlet): boolean {
+  return (
+    a.boreM === b.boreM &&
+    a.nozzle.conductance === b.nozzle.conductance &&
+    a.regulatorGaugePa === b.regulatorGaugePa &&
+    a.line.length === b.line.length &&
+    a.line.every((element, i) => {
+      const { insideDiameterM, relativeRoughness, lengthRatio, lossK } = b.line[i]!
+      return (
+        element.insideDiameterM === insideDiameterM &&
+        element.relativeRoughness === relativeRoughness &&
+        element.lengthRatio === lengthRatio &&
+        element.lossK === lossK
+      )
+    })
+  )
+}
+
+/** The limit bore of every outlet. Outlets that are alike have one, and it is searched once; reasons name their own. */
+export function limitBoresPrepared(rig: PreparedRig, targetGaugePa: number): LimitBore[] {
+  const limits: LimitBore[] = []
+  rig.outlets.forEach((outlet, i) => {
+    const twin = limits[rig.outlets.findIndex((other) => areAlike(other, outlet))]
+    limits.push(twin && twin.boreM !== null ? twin : limitBorePrepared(rig, targetGaugePa, i))
+  })
+  return limits
 }
 
 /**

@@ -5,8 +5,6 @@ import type { LineElement } from './rig.ts'
 export const defaultRoughnessM = 1e-5
 const laminarLimit = 2300
 const turbulentLimit = 4000
-/** of a hose that works hard */
-const ordinaryFriction = 0.018
 
 /**
  * Darcy friction factor.
@@ -59,8 +57,6 @@ export interface LineFlow {
   /** φm L / D */
   lengthRatio: number
   lossK: number
-  /** what it adds to (p/ṁ)² with an ordinary friction factor and without its logarithm: for a first guess */
-  roughSquare: number
 }
 
 /** What every element of a rig shares: its air. */
@@ -78,18 +74,14 @@ export function prepareLineAir(temperatureK: number): LineAir {
 export function prepareElement(element: LineElement, air: LineAir, place: string, index: number): LineFlow {
   const d = element.insideDiameterM
   const area = (Math.PI / 4) * d * d
-  const chokePerFlow = air.isothermalSpeed / area
-  const lengthRatio = ((element.mediaFactor ?? 1) * (element.lengthM ?? 0)) / d
-  const lossK = element.lossK ?? 0
   return {
     name: element.name || `${place}-${index + 1}`,
     insideDiameterM: d,
-    chokePerFlow,
+    chokePerFlow: air.isothermalSpeed / area,
     reynoldsPerFlow: 4 / (Math.PI * d * air.viscosityPaS),
     relativeRoughness: (element.roughnessM ?? defaultRoughnessM) / d,
-    lengthRatio,
-    lossK,
-    roughSquare: chokePerFlow * chokePerFlow * (ordinaryFriction * lengthRatio + lossK),
+    lengthRatio: ((element.mediaFactor ?? 1) * (element.lengthM ?? 0)) / d,
+    lossK: element.lossK ?? 0,
   }
 }
 

@@ -4,7 +4,7 @@ import { airTakenFirstMass, deliveryAt, prepareDelivery } from './compressor.ts'
 import type { Delivery } from './compressor.ts'
 import { marchBack, prepareElement, prepareLineAir, restartMarch, startMarch } from './line.ts'
 import type { LineAir, LineFlow, March } from './line.ts'
-import { gaugeAtMassFlow, massFlowAtGauge, prepareNozzle } from './nozzle.ts'
+import { criticalFlowFunction, gaugeAtMassFlow, massFlowAtGauge, prepareNozzle } from './nozzle.ts'
 import type { NozzleFlow } from './nozzle.ts'
 import type { LineElement, Rig, Site } from './rig.ts'
 import { findRoot } from './rootFinding.ts'
@@ -55,6 +55,29 @@ export function prepareRig(rig: Rig, site: Site): PreparedRig {
   }
 }
 
+/** friction factor of a hose that works hard */
+const ordinaryFriction = 0.018
+
+/** What a line adds to (p/ṁ)², its friction ordinary and its logarithm left out. */
+function roughSquare(line: readonly LineFlow[]): number {
+  let square = 0
+  for (let i = 0; i < line.length; i++) {
+    const { chokePerFlow, lengthRatio, lossK } = line[i]!
+    square += chokePerFlow * chokePerFlow * (ordinaryFriction * lengthRatio + lossK)
+  }
+  return square
+}
+
+/**
+ * Compressor pressure over flow with the only nozzle sonic, Pa s/kg: every pressure then stands nearly in proportion to
+ * the flow.
+ */
+export function roughPressurePerFlow({ outlets, airLine }: PreparedRig): number {
+  const { nozzle, line } = outlets[0]!
+  const nozzlePerFlow = 1 / (nozzle.conductance * criticalFlowFunction)
+  return Math.sqrt(nozzlePerFlow * nozzlePerFlow + roughSquare(line) + roughSquare(airLine))
+}
+
 /** The march from an outlet's nozzle, passing this flow, back to the manifold; see marchBack. */
 export function marchOutlet(outlet: PreparedOutlet, massFlow: number, march: March): void {
   restartMarch(march, gaugeAtMassFlow(outlet.nozzle, massFlow))
@@ -85,11 +108,11 @@ export function outletMassFlow(outlet: PreparedOutlet, manifoldGaugePa: number, 
       const next = flow + ((feedPa - pressure) * (flow - earlierFlow)) / (pressure - earlierPa)
       earlierFlow = flow
       earlierPa = pressure
-      return next
+      return Math.min(next, most)
     },
     low: 0,
     high: most,
-    guess: guess > 0 ? guess : most,
+    guess: guess > 0 ? Math.min(guess, most) : most,
     widthTolerance: 1e-12,
     residualTolerance: 1e-11,
     zeroTolerance: 4e-15,

@@ -1,5 +1,5 @@
 import { findCautions, waterToDrain } from '../airflow/cautions.ts'
-import { limitBorePrepared } from '../airflow/limitBore.ts'
+import { limitBoresPrepared } from '../airflow/limitBore.ts'
 import { checkPrepared } from '../airflow/pressureCheck.ts'
 import { prepareRig } from '../airflow/preparedRig.ts'
 import { noGoBit, orderBit } from '../catalogue/drillBits.ts'
@@ -24,6 +24,7 @@ export function answerCheck(request: CheckRequest): CheckAnswer {
   const freeAir = (massFlow: number) => (massFlow / prepared.ambient.dryAirDensity) * perMinute
   const gaugeKpa = (pressurePa: number) => (pressurePa - ambientPa) / 1000
   const { operatingPoint, atTarget } = check
+  const limits = limitBoresPrepared(prepared, targetGaugePa)
   return {
     verdict: check.verdict,
     reason: check.reason,
@@ -44,7 +45,7 @@ export function answerCheck(request: CheckRequest): CheckAnswer {
       airMarginPct: atTarget.airMargin * 100,
     },
     outlets: request.outlets.map(({ nozzle }, index): OutletAnswer => {
-      const limit = limitBorePrepared(prepared, targetGaugePa, index)
+      const limit = limits[index]!
       const limitBoreMm = limit.boreM === null ? null : limit.boreM * 1000
       return {
         limitBoreMm,

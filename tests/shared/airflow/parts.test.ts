@@ -128,12 +128,13 @@ describe('the root finder', () => {
     jump: even(0, 1),
     closed: even(0.5, 1.5),
     power: fc.constantFrom(1, 3, 1 / 3, 9),
-    proposal: fc.constantFrom('secant', 'wild', 'none', 'stuck'),
+    proposal: fc.constantFrom('secant', 'wild', 'none', 'stuck', 'end'),
+    isSlopeKnown: fc.boolean(),
   })
 
   it('ends within 200 evaluations at the root, the jump, or the closed part, whatever it is proposed', () => {
     fc.assert(
-      fc.property(functions, ({ root, steepness, jump, closed, power, proposal }) => {
+      fc.property(functions, ({ root, steepness, jump, closed, power, proposal, isSlopeKnown }) => {
         let evaluations = 0
         let earlierX = 0
         let earlierY = -1
@@ -150,7 +151,7 @@ describe('the root finder', () => {
             const secant = x - (y * (x - earlierX)) / (y - earlierY)
             earlierX = x
             earlierY = y
-            return { secant, wild: x * 1e9 - 3, none: NaN, stuck: x }[proposal]!
+            return { secant, wild: x * 1e9 - 3, none: NaN, stuck: x, end: 1 }[proposal]!
           },
           low: 0,
           high: 1,
@@ -158,6 +159,7 @@ describe('the root finder', () => {
           widthTolerance: 1e-9,
           residualTolerance: 1e-8,
           zeroTolerance: 0,
+          leastSlope: isSlopeKnown && power === 1 ? 0.5 * 10 ** steepness : 0,
         })
         expect(found.evaluations).toBe(evaluations)
         expect(evaluations).toBeLessThanOrEqual(200)
@@ -172,5 +174,40 @@ describe('the root finder', () => {
       }),
       { seed, numRuns: 5_000 },
     )
+  })
+
+  const line = {
+    propose: () => NaN,
+    low: 0,
+    high: 1,
+    widthTolerance: 1e-9,
+    residualTolerance: 1e-8,
+    zeroTolerance: 0,
+  }
+
+  it('needs no second side where the slope is known', () => {
+    const found = findRoot({ ...line, evaluate: (x) => x - 0.3, guess: 0.3 + 1e-10, leastSlope: 0.5 })
+    expect(found.evaluations).toBe(1)
+    expect(found.low).toBeLessThanOrEqual(0.3)
+    expect(found.high - found.low).toBeLessThanOrEqual(1e-9)
+  })
+
+  it('takes a proposal at the high end, once', () => {
+    const met = findRoot({ ...line, evaluate: (x) => x - 1, propose: () => 1, guess: 0.5 })
+    expect([met.x, met.evaluations]).toEqual([1, 2])
+    const short = findRoot({ ...line, evaluate: (x) => x - 0.25, propose: () => 1, guess: 0.5 })
+    expect(short.x).toBeCloseTo(0.25, 8)
+  })
+
+  it('leaves guesses alone that close in from one side, and pushes the last of them across the root', () => {
+    const found = findRoot({
+      ...line,
+      evaluate: (x) => Math.log(x / 0.03),
+      // tangents of a concave function never pass its root
+      propose: (x, y) => x - x * y,
+      guess: 0.02,
+    })
+    expect(found.evaluations).toBeLessThanOrEqual(10)
+    expect(found.high - found.low).toBeLessThanOrEqual(1e-9)
   })
 })
