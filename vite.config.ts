@@ -109,7 +109,12 @@ export default defineConfig({
     __VUE_I18N_FULL_INSTALL__: false,
     __INTLIFY_PROD_DEVTOOLS__: false,
   },
-  server: { port: 5173, strictPort: true, proxy: { '/api': `http://127.0.0.1:${process.env.PORT ?? 3000}` } },
+  server: {
+    port: 5173,
+    strictPort: true,
+    // The host stays what was typed, or the API would take our own page for that of another site.
+    proxy: { '/api': { target: `http://127.0.0.1:${process.env.PORT ?? 3000}`, changeOrigin: false } },
+  },
   build: {
     outDir: 'dist',
     target: 'es2022',

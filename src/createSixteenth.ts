@@ -6,15 +6,17 @@ import App from './App.vue'
 import { createTranslations } from './i18n/index.ts'
 import type { Messages } from './i18n/en/index.ts'
 import { createPages } from './router/index.ts'
+import { createRoomKeeper } from './router/prepareRooms.ts'
 import { usePreferencesStore } from './stores/preferences.ts'
 import { preset } from './theme/preset.ts'
 
 /** The application, for the browser and for the page that is drawn at build. */
 export function createSixteenth(history: RouterHistory, spanish?: Messages) {
   const app = createApp(App)
-  const router = createPages(history)
   app.use(createPinia())
-  app.use(createTranslations(usePreferencesStore().language, spanish))
+  const translations = createTranslations(usePreferencesStore().language, spanish)
+  const router = createPages(history, createRoomKeeper(app, translations))
+  app.use(translations)
   app.use(PrimeVue, { theme: { preset, options: { darkModeSelector: false, cssLayer: false } } })
   app.use(router)
   return { app, router }

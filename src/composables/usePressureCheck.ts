@@ -1,5 +1,6 @@
 import { storeToRefs } from 'pinia'
 import { computed, watch } from 'vue'
+import type { Ref } from 'vue'
 import { answerCheck } from '#shared/check/answerCheck.ts'
 import { questionOfCheck } from '#shared/check/rigOfCheck.ts'
 import type { CheckRequest } from '#shared/contracts/check.ts'
@@ -18,8 +19,12 @@ export function answerRequest(request: CheckRequest): AnsweredCheck {
  * visit to another page too.
  */
 export function usePressureCheck(form: () => CheckForm) {
+  return useAnsweredForm(form, storeToRefs(usePressureCheckStore()).lastAnswered)
+}
+
+/** The same for a form of its own, with the place where its last whole answer is kept. */
+export function useAnsweredForm(form: () => CheckForm, answered: Ref<AnsweredCheck | null>) {
   const read = computed(() => readForm(form(), otherUnit.value))
-  const { lastAnswered: answered } = storeToRefs(usePressureCheckStore())
   const isStale = computed(() => read.value.request === null)
   watch(
     read,

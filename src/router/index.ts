@@ -1,6 +1,9 @@
 import { createRouter } from 'vue-router'
 import type { RouterHistory } from 'vue-router'
 import PressureCheckView from '../views/check/PressureCheckView.vue'
+import { accountPages } from './accountPages.ts'
+import { fleetPages } from './fleetPages.ts'
+import { guardPages } from './guards.ts'
 
 const SettingsView = () => import('../views/settings/SettingsView.vue')
 const SourcesView = () => import('../views/sources/SourcesView.vue')
@@ -11,8 +14,8 @@ export function fetchPages(): Promise<unknown>[] {
 }
 
 /** The check is in the first script, since it is what a visitor came for; every other page is fetched when opened. */
-export function createPages(history: RouterHistory) {
-  return createRouter({
+export function createPages(history: RouterHistory, prepareRooms: () => Promise<void>) {
+  const router = createRouter({
     history,
     routes: [
       { path: '/', name: 'check', component: PressureCheckView },
@@ -22,6 +25,8 @@ export function createPages(history: RouterHistory) {
         component: SettingsView,
       },
       { path: '/sources', name: 'sources', component: SourcesView },
+      ...fleetPages,
+      ...accountPages,
       {
         path: '/:path(.*)*',
         name: 'not-found',
@@ -30,4 +35,6 @@ export function createPages(history: RouterHistory) {
     ],
     scrollBehavior: (to, from, saved) => saved ?? (to.path === from.path ? undefined : { top: 0 }),
   })
+  guardPages(router, prepareRooms)
+  return router
 }

@@ -7,9 +7,13 @@ import { BIT_SETS } from '#shared/catalogue/drillBits.ts'
 import { ABRASIVES } from '#shared/catalogue/media.ts'
 import { cautionSentences } from '#shared/check/cautionSentences.ts'
 import type { OutletAnswer, Verdict } from '#shared/contracts/check.ts'
+import { auditActions, personStates } from '#shared/contracts/people.ts'
+import { roles } from '#shared/contracts/permissions.ts'
 import type { Cooling, EngineChoice, MediaLoading, NozzleShape } from '#shared/form/checkForm.ts'
 import type { FieldProblem } from '#shared/form/readForm.ts'
 import type { UnitSystem } from '#shared/units/quantities.ts'
+import type { FieldSentence, RefusalSentence } from '../../src/components/account/formErrors.ts'
+import { navigationPages } from '../../src/components/layout/navigationPages.ts'
 import { en } from '../../src/i18n/en/index.ts'
 import { es } from '../../src/i18n/es/index.ts'
 import { languages, themes } from '../../src/stores/preferences.ts'
@@ -54,8 +58,52 @@ const loadings = namesOf<MediaLoading>({ clean: true, lean: true, normal: true, 
 const shapes = namesOf<NozzleShape>({ venturi: true, straight: true })
 const unitSystems = namesOf<UnitSystem>({ us: true, metric: true })
 
+const actionNames = auditActions.map((action) => action.replace('.', '_'))
+const refusals = namesOf<RefusalSentence>({
+  offline: true,
+  'invalid-fields': true,
+  'too-many-requests': true,
+  'not-signed-in': true,
+  'wrong-credentials': true,
+  forbidden: true,
+  'link-not-good': true,
+  'version-conflict': true,
+  'id-in-use': true,
+  'too-many-records': true,
+  'last-admin': true,
+  'last-owner': true,
+  busy: true,
+  'storage-unavailable': true,
+  'not-found': true,
+  other: true,
+})
+
 /** What stands for the variable part of a key, by the key as it is written in the source. */
 const expansions: Record<string, readonly string[]> = {
+  "accounts.audit.actions.${entry.action.replace('.', '_')}": actionNames,
+  "accounts.audit.actions.${value.replace('.', '_')}": actionNames,
+  'accounts.audit.fields.${known}': ['name', 'roles', 'state', 'currency', 'language', 'timeZone', 'email'],
+  'accounts.people.last.${role}': ['owner', 'admin'],
+  'accounts.people.lastStays.${role}': ['owner', 'admin'],
+  'accounts.people.states.${state}': personStates,
+  'accounts.people.states.${text}': personStates,
+  'accounts.problems.${fieldSentence(error, blanks.value.has(pointer))}': namesOf<FieldSentence>({
+    required: true,
+    'too-long': true,
+    'too-short': true,
+    'too-common': true,
+    'too-few': true,
+    'not-an-email': true,
+    'not-a-time-zone': true,
+    'not-a-currency': true,
+    'name-in-use': true,
+    'wrong-password': true,
+    invalid: true,
+  }),
+  'accounts.refusals.${refusalOf(error)}': refusals,
+  'accounts.refusals.${refusalSentence(refusal.value.code)}': refusals,
+  'accounts.roles.may.${role}': roles,
+  'accounts.roles.names.${role}': roles,
   "bits.sets.${set.replace('.', '_')}": BIT_SETS.map((set) => set.replace('.', '_')),
   'check.${outcome}': ['shared', 'shareFailed'],
   'elements.${base}': ['air-line', 'pot', 'blast-hose', 'whip', 'regulator'],
@@ -83,8 +131,9 @@ const expansions: Record<string, readonly string[]> = {
     'drop-too-large': true,
     'loss-too-large': true,
   }),
-  'nav.${page.name}': ['check', 'sources', 'settings'],
+  'nav.${page.name}': navigationPages.map(({ name }) => name),
   'pages.settings.unitNames.${value}': unitSystems,
+  'pages.settings.languageNames.${theirs.language}': languages,
   'pages.settings.languageNames.${value}': languages,
   'pages.settings.themeNames.${value}': themes,
   'reasons.${code}': namesOf<CodeOf<Reason>>({
@@ -142,6 +191,7 @@ const formsOf = (text: string) => text.split(' | ').length
 
 /** Names, titles of rules, and words that both languages write alike; figures without a word need no leave. */
 const alikeInBoth = new Set([
+  'accounts.audit.no',
   'app.name',
   'fields.nozzle.loadings.normal',
   'fields.nozzle.shapes.venturi',

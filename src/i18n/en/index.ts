@@ -1,9 +1,8 @@
-import { common } from './common.ts'
-import { fields } from './fields.ts'
-import { results } from './results.ts'
-import { pages } from './pages.ts'
+import { firstWords } from './firstWords.ts'
+import { rooms } from './rooms.ts'
 
-export const en = { ...common, fields, results, pages }
+/** All of it: the application fetches the two parts apart, so this is for types and tests alone. */
+export const en = { ...firstWords, ...rooms }
 
 type Worded<T> = { [K in keyof T]: T[K] extends string ? string : Worded<T[K]> }
 /** What every language has to say. */
