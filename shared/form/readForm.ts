@@ -7,7 +7,7 @@ import { checkLimits, minUnloadAboveSetKpa } from '../contracts/limits.ts'
 import type { Range } from '../contracts/limits.ts'
 import { resolveAmbient } from '../airflow/index.ts'
 import { parseQuantity } from '../units/parse.ts'
-import type { ParseOptions, ParseProblem } from '../units/parse.ts'
+import type { ParseOptions, ParseProblem, ParseResult } from '../units/parse.ts'
 import { snapBoreMm } from '../units/quantities.ts'
 import type { QuantityKind } from '../units/quantities.ts'
 import type { CheckForm, HoseForm, OutletForm, TypedText } from './checkForm.ts'
@@ -70,6 +70,28 @@ export function readField(name: FieldName, typed: TypedText, otherUnit?: OtherUn
   return parseQuantity(kind, typed.text, { system: typed.system, range, otherUnit: otherUnit?.(kind) })
 }
 
+interface Reading {
+  name: FieldName
+  text: string
+  system: TypedText['system']
+  otherUnit: OtherUnit | undefined
+  read: ParseResult
+}
+
+/** What a field was last read as: while one bore is dragged, all the others are as they were. */
+const lastReadings = new WeakMap<TypedText, Reading>()
+
+function readFieldOnce(name: FieldName, typed: TypedText, otherUnit?: OtherUnit): ParseResult {
+  const { text, system } = typed
+  const last = lastReadings.get(typed)
+  const isSame =
+    last?.text === text && last.system === system && last.name === name && last.otherUnit === otherUnit
+  if (last && isSame) return last.read
+  const read = readField(name, typed, otherUnit)
+  lastReadings.set(typed, { name, text, system, otherUnit, read })
+  return read
+}
+
 /** The coefficient that loading and shape stand for. */
 export function coefficientOf(outlet: Pick<OutletForm, 'loading' | 'shape'>): number {
   const loaded = DISCHARGE_COEFFICIENTS.find((row) => row.id === outlet.loading)?.value ?? 0.81
@@ -84,7 +106,7 @@ class FormReader {
 
   /** NaN where the text is wrong, so that what depends on it is wrong too. */
   require(path: string, name: FieldName, typed: TypedText): number {
-    const read = readField(name, typed, this.otherUnit)
+    const read = readFieldOnce(name, typed, this.otherUnit)
     if (!read.ok) {
       this.problems[path] = read
       return NaN

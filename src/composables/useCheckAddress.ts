@@ -1,4 +1,4 @@
-import { onMounted, watch } from 'vue'
+import { effect, onBeforeUnmount, onMounted, stop, watch } from 'vue'
 import { onBeforeRouteLeave, useRoute, useRouter } from 'vue-router'
 import { usePressureCheckStore } from '../stores/pressureCheck.ts'
 
@@ -30,14 +30,17 @@ export function useCheckAddress() {
   }
 
   if (!import.meta.env.SSR) store.resume(route.hash)
-  watch(
-    () => store.form,
-    () => {
+  /** What a deep watcher would walk through at each move of the thumb is walked through once it rests. */
+  const follow = effect(() => store.fragment(), {
+    scheduler() {
       clearTimeout(pause)
-      pause = setTimeout(write, delayMs)
+      pause = setTimeout(() => {
+        follow()
+        write()
+      }, delayMs)
     },
-    { deep: true },
-  )
+  })
+  onBeforeUnmount(() => stop(follow))
   /** A link pasted over an open check is opened; the page's own link, without one, leaves the check as it is. */
   watch(
     () => route.hash,

@@ -5,8 +5,18 @@ import type { FormattedQuantity } from '#shared/units/format.ts'
 import type { QuantityKind } from '#shared/units/quantities.ts'
 import { usePreferencesStore } from '../stores/preferences.ts'
 
-/** Sentences without a gap, by language: hundreds are asked for at each touch, and none needs the compiler. */
-const plainWords = new Map<string, string>()
+/**
+ * Sentences by language, cut at their gaps: `['hold ', 'target', ' here']`. Hundreds are asked for at each touch, and
+ * none needs the compiler; null is for those that do.
+ */
+const cutSentences = new Map<string, readonly string[] | null>()
+
+/** Odd places are the names of gaps. A plural, a linked or a quoted sentence is the compiler's. */
+function cutSentence(written: unknown): readonly string[] | null {
+  if (typeof written !== 'string') return null
+  const pieces = written.split(/\{(\w+)\}/)
+  return pieces.some((piece) => /[{}@|]/.test(piece)) ? null : pieces
+}
 
 const stepInto = (tree: unknown, name: string) => (tree as Record<string, unknown> | undefined)?.[name]
 
@@ -16,15 +26,21 @@ export function useWords() {
   const preferences = usePreferencesStore()
   const system = computed(() => preferences.units)
 
-  function t(key: string, words?: Record<string, unknown>, count?: number): string {
-    if (words) return count === undefined ? translate(key, words) : translate(key, words, count)
+  function cutOf(key: string): readonly string[] | null {
     const place = `${locale.value}.${key}`
-    let text = plainWords.get(place)
-    if (text === undefined) {
-      const written = key.split('.').reduce<unknown>(stepInto, getLocaleMessage(locale.value))
-      text = typeof written === 'string' && !/[{}@|]/.test(written) ? written : translate(key)
-      plainWords.set(place, text)
+    let pieces = cutSentences.get(place)
+    if (pieces === undefined) {
+      pieces = cutSentence(key.split('.').reduce<unknown>(stepInto, getLocaleMessage(locale.value)))
+      cutSentences.set(place, pieces)
     }
+    return pieces
+  }
+
+  function t(key: string, words: Record<string, unknown> = {}, count?: number): string {
+    const pieces = cutOf(key)
+    if (!pieces) return count === undefined ? translate(key, words) : translate(key, words, count)
+    let text = pieces[0]!
+    for (let i = 1; i < pieces.length; i += 2) text += String(words[pieces[i]!] ?? '') + pieces[i + 1]!
     return text
   }
 

@@ -13,8 +13,12 @@ interface TraceEvent {
 
 const slowdown = 4
 const moves = 100
-/** Longer than the chart waits, shorter than the address does, which is written once the thumb rests. */
+/** Longer than the panels wait, shorter than the address does, which is written once the thumb rests. */
 const pauseMs = 220
+
+const phone = { width: 390, height: 844 }
+/** Where the chart is seen while the bore is dragged: on a phone it lies below the form. */
+const desk = { width: 1440, height: 900 }
 
 const scriptAndLayout = new Set([
   'EventDispatch',
@@ -26,6 +30,9 @@ const scriptAndLayout = new Set([
   'Layout',
 ])
 const painting = new Set(['PrePaint', 'Paint', 'Layerize', 'Commit'])
+
+const framesCategory = 'disabled-by-default-devtools.timeline.frame'
+const frameName = 'SubmitCompositorFrameToPresentationCompositorFrame'
 
 const isScriptOrLayout = ({ name }: TraceEvent) => scriptAndLayout.has(name)
 const isWork = (event: TraceEvent) => isScriptOrLayout(event) || painting.has(event.name)
@@ -61,14 +68,9 @@ async function drag(page: Page) {
   await page.mouse.up()
 }
 
-/**
- * The times of each move of the bore on a phone's screen, from the browser's own trace.
- *
- * A move's work up to the panels' timer is the number, the ruler and the frame that shows them; what follows is the
- * panels and the chart. Moves that snap to the bore they came from do nothing and are left out.
- */
-export async function measureDrag(browser: Browser, address: string) {
-  const context = await browser.newContext({ viewport: { width: 390, height: 844 } })
+/** What the browser did on the page's behalf at each move of the bore. */
+async function traceMoves(browser: Browser, address: string, viewport: typeof phone, categories: string[]) {
+  const context = await browser.newContext({ viewport })
   const page = await context.newPage()
   await page.goto(address)
   await page.getByTestId('hour').waitFor()
@@ -76,36 +78,61 @@ export async function measureDrag(browser: Browser, address: string) {
   await page.getByTestId('draw-curve').locator('canvas').waitFor()
   const session = await context.newCDPSession(page)
   await session.send('Emulation.setCPUThrottlingRate', { rate: slowdown })
-  await browser.startTracing(page, { categories: ['devtools.timeline'] })
+  await browser.startTracing(page, { categories: ['devtools.timeline', ...categories] })
   await drag(page)
   const trace = JSON.parse((await browser.stopTracing()).toString()) as { traceEvents: TraceEvent[] }
   await context.close()
 
-  const starts = trace.traceEvents
-    .filter(({ name, args }) => name === 'EventDispatch' && args?.data?.type === 'pointermove')
-    .sort((a, b) => a.ts - b.ts)
+  const isMove = ({ name, args }: TraceEvent) =>
+    name === 'EventDispatch' && args?.data?.type === 'pointermove'
+  const inOrder = trace.traceEvents.toSorted((a, b) => a.ts - b.ts)
+  const starts = inOrder.filter(isMove)
   const { pid, tid } = starts[0]!
-  const events = trace.traceEvents
-    .filter((event) => event.pid === pid && event.tid === tid && event.ph === 'X' && isWork(event))
-    .sort((a, b) => a.ts - b.ts)
+  const ofPage = inOrder.filter((event) => event.pid === pid)
+  return starts.map((start, index) => {
+    const next = starts[index + 1]?.ts ?? start.ts + pauseMs * 1000
+    const all = ofPage.filter(({ ts }) => ts >= start.ts && ts < next)
+    return { start, all, ofMainThread: all.filter((event) => event.tid === tid && event.ph === 'X') }
+  })
+}
 
+/**
+ * The times of each move on a phone's screen: its work up to the first timer is the number, the ruler and the frame that
+ * shows them, what follows is all the rest. Moves that snap to the bore they came from do nothing and are left out.
+ */
+async function measureAnswer(browser: Browser, address: string) {
   const answerTimes: number[] = []
   const answerFrameTimes: number[] = []
-  const panelTimes: number[] = []
-  const chartDelays: number[] = []
-  starts.forEach((start, index) => {
-    const next = starts[index + 1]?.ts ?? start.ts + pauseMs * 1000
-    const own = events.filter(({ ts }) => ts >= start.ts && ts < next)
-    const timer = own.find(({ name }) => name === 'TimerFire')
-    if (!timer) return
-    const shown = own.find(({ name, ts }) => name === 'Paint' && ts > timer.ts + (timer.dur ?? 0))
-    if (!shown) return
-    const isOfPanels = ({ ts }: TraceEvent) => ts >= timer.ts && ts <= shown.ts
-    const ofAnswer = own.filter(({ ts }) => ts < timer.ts)
+  const restTimes: number[] = []
+  for (const { ofMainThread } of await traceMoves(browser, address, phone, [])) {
+    const work = ofMainThread.filter(isWork)
+    const timer = work.find(({ name }) => name === 'TimerFire')
+    if (!timer) continue
+    const ofAnswer = work.filter(({ ts }) => ts < timer.ts)
     answerTimes.push(coveredMs(ofAnswer.filter(isScriptOrLayout)))
     answerFrameTimes.push(coveredMs(ofAnswer))
-    panelTimes.push(coveredMs(own.filter(isOfPanels).filter(isScriptOrLayout)))
-    chartDelays.push((shown.ts + (shown.dur ?? 0) - start.ts) / 1000)
-  })
-  return { slowdown, moves: answerTimes.length, answerTimes, answerFrameTimes, panelTimes, chartDelays }
+    restTimes.push(coveredMs(work.filter(({ ts }) => ts >= timer.ts).filter(isScriptOrLayout)))
+  }
+  return { answerTimes, answerFrameTimes, restTimes }
+}
+
+/** From each move to the frame with the drawn canvas on the screen. A canvas is painted without a `Paint` of the page. */
+async function measureChart(browser: Browser, address: string) {
+  const categories = ['blink', 'disabled-by-default-devtools.timeline', framesCategory]
+  const delays: number[] = []
+  for (const { start, all, ofMainThread } of await traceMoves(browser, address, desk, categories)) {
+    const drawn = ofMainThread.find(({ name }) => name === 'CanvasRenderingContext2D::FinalizeFrame')
+    const committed = ofMainThread.find(({ name, ts }) => drawn && name === 'Commit' && ts > drawn.ts)
+    const ofFrame = all.filter(({ name, ts }) => committed && name === frameName && ts > committed.ts)
+    const submitted = ofFrame.find(({ ph }) => ph === 'b')
+    const presented = ofFrame.find(({ ph, ts }) => submitted && ph === 'e' && ts >= submitted.ts)
+    if (presented) delays.push((presented.ts - start.ts) / 1000)
+  }
+  return delays
+}
+
+export async function measureDrag(browser: Browser, address: string) {
+  const answer = await measureAnswer(browser, address)
+  const chartDelays = await measureChart(browser, address)
+  return { slowdown, ...answer, chartDelays }
 }

@@ -30,11 +30,13 @@ try {
   )
 
   const drag = await measureDrag(browser, server.address)
-  console.log(`Dragging the bore, ${drag.moves} moves, processor slowed ${drag.slowdown} times:`)
-  console.log(`  number and ruler, script and layout: ${describeTimes(drag.answerTimes)}`)
-  console.log(`  the same with painting: ${describeTimes(drag.answerFrameTimes)}`)
-  console.log(`  all panels and the chart, script and layout: ${describeTimes(drag.panelTimes)}`)
-  console.log(`  from the move to the drawn chart: ${describeTimes(drag.chartDelays)}`)
+  console.log(`Dragging the bore, processor slowed ${drag.slowdown} times:`)
+  console.log(`  phone, ${drag.answerTimes.length} moves that change it`)
+  console.log(`    number and ruler, script and layout: ${describeTimes(drag.answerTimes)}`)
+  console.log(`    the same with painting: ${describeTimes(drag.answerFrameTimes)}`)
+  console.log(`    chart, fields and panels after it, script and layout: ${describeTimes(drag.restTimes)}`)
+  console.log(`  desk, ${drag.chartDelays.length} moves that change it`)
+  console.log(`    from the move to the chart on the screen: ${describeTimes(drag.chartDelays)}`)
 
   const { scores, metrics, runs } = await measureLighthouse(debuggingPort, server.address)
   console.log(`Lighthouse, mobile, median of ${runs}:`)
