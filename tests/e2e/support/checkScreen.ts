@@ -61,7 +61,7 @@ export class CheckScreen {
     await this.page.evaluate(() => scrollTo(0, 0))
   }
 
-  async goTo(page: 'check' | 'sources' | 'settings') {
+  async goTo(page: 'check' | 'rigs' | 'sources' | 'settings') {
     await this.page
       .locator(`nav a.item[href^="/${page === 'check' ? '' : page}"]`)
       .first()
