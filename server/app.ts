@@ -23,6 +23,8 @@ export function createApp(context: AppContext): Express {
   const client = readBuiltClient(context.config.clientDir)
   const app = express()
   app.set('trust proxy', context.config.trustProxy)
+  // Answers of the API are never stored, and the client's files carry marks of their own.
+  app.set('etag', false)
   app.use(requestLog(context.logger))
   app.use(securityHeaders(context.config, client.inlineScriptHashes))
   app.use(compression())

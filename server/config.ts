@@ -99,6 +99,13 @@ export class ConfigError extends Error {
   }
 }
 
+/** Sessions travel over TLS only, but on the own machine, where nothing travels. */
+function isReachedSafely(publicUrl: string): boolean {
+  if (!URL.canParse(publicUrl)) return true
+  const { protocol, hostname } = new URL(publicUrl)
+  return protocol === 'https:' || isLoopbackHost(hostname.replace(/^\[|\]$/g, ''))
+}
+
 export function isLoopbackHost(host: string): boolean {
   if (host === 'localhost' || host === '::1') return true
   return isIP(host) === 4 && host.startsWith('127.')
@@ -113,6 +120,9 @@ export function readConfig(environment: Record<string, string | undefined>): Con
   if (given['NODE_ENV'] === 'production') {
     for (const [name, meaning] of Object.entries(requiredInProduction)) {
       if (given[name] === undefined) complaints.push(`${name} is missing: ${meaning}`)
+    }
+    if (!isReachedSafely(given['PUBLIC_URL'] ?? '')) {
+      complaints.push('PUBLIC_URL must begin with https:// in production: sessions travel over TLS only')
     }
   }
   if (!parsed.success || complaints.length > 0) throw new ConfigError(complaints)

@@ -26,9 +26,13 @@ function translate(error: unknown): ProblemError {
 }
 
 export function errorHandler(logger: Logger): ErrorRequestHandler {
-  return (error, _request, response, next) => {
+  return (error, request, response, next) => {
     const { problem } = translate(error)
-    if (problem.status >= 500) logger.error({ err: error }, 'unexpected error')
+    if (problem.status >= 500)
+      logger.error(
+        { err: error, method: request.method, path: request.path, id: request.id },
+        'unexpected error',
+      )
     if (response.headersSent) return next(error)
     if (error instanceof PassingProblemError) response.set('Retry-After', String(error.retryAfterS))
     response.status(problem.status).type('application/problem+json').send(JSON.stringify(problem))

@@ -10,7 +10,9 @@ export function createLogger(level: string): Logger {
   })
 }
 
+/** A line for each request, with its id. Where such lines are not wanted, failures are still noted by the error handler. */
 export function requestLog(logger: Logger): RequestHandler {
+  if (!logger.isLevelEnabled('info')) return (_request, _response, next) => next()
   return pinoHttp({
     logger,
     customLogLevel: (_request, response) => (response.statusCode >= 500 ? 'error' : 'info'),

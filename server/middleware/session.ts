@@ -11,13 +11,18 @@ declare module 'express-session' {
   }
 }
 
+/** Whether the cookie may travel over TLS only. Browsers take their own machine for as good as TLS. */
+export function isCookieSecure({ config, publicUrl }: Pick<AppContext, 'config' | 'publicUrl'>): boolean {
+  return config.isProduction || publicUrl.startsWith('https:')
+}
+
 const handlers = new WeakMap<AppContext, RequestHandler>()
 
 /** One session handler for all routes of an application. Nobody has a session before signing in. */
 export function sessionHandler(context: AppContext): RequestHandler {
   const existing = handlers.get(context)
   if (existing) return existing
-  const isSecure = context.publicUrl.startsWith('https:')
+  const isSecure = isCookieSecure(context)
   const keep = session({
     name: sessionCookieName,
     secret: context.sessionSecret,

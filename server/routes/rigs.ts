@@ -9,9 +9,9 @@ import {
   todayInputSchema,
   todaySchema,
 } from '#shared/contracts/rigs.ts'
-import { defineRoute } from '../routing/route.ts'
+import { defineRoute, JsonText } from '../routing/route.ts'
 import { readFleet } from '../services/fleet.ts'
-import { listRigs, rigKind } from '../services/rigs.ts'
+import { rigKind, writeRigList } from '../services/rigs.ts'
 import { pickToday } from '../services/today.ts'
 import { recordRoutes } from './recordRoutes.ts'
 
@@ -34,7 +34,7 @@ export const rigRoutes = [
     summary: 'The rigs by name in short, a page at a time',
     query: pageQuerySchema,
     answer: rigPageSchema,
-    handle: ({ context, caller, query }) => listRigs(context, caller, query),
+    handle: ({ context, caller, query }) => new JsonText(writeRigList(context, caller, query)),
   }),
   ...recordRoutes({
     kind: rigKind,

@@ -11,6 +11,8 @@ import { sessionHandler } from '../middleware/session.ts'
 import { parseBody } from '../parseBody.ts'
 import { makeProblem } from '../problems.ts'
 import { identify } from '../services/identify.ts'
+import { refuseEnded } from '../services/signIn.ts'
+import { JsonText } from './route.ts'
 import type { RouteSpec } from './route.ts'
 
 const emptyQuery = z.strictObject({})
@@ -51,17 +53,23 @@ function answerCall(spec: RouteSpec, context: AppContext): RequestHandler {
     })
     if (response.headersSent || spec.file) return
     response.status(spec.status ?? 200)
-    if (spec.answer) response.json(answer)
+    if (answer instanceof JsonText) response.type('application/json').send(answer.text)
+    else if (spec.answer) response.json(answer)
     else response.end()
   }
 }
 
 function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
   const readsSession = spec.access !== 'anyone'
+  const needsSession = readsSession && spec.access !== 'visitor'
   const guard: RequestHandler = (request, response, next) => {
     const caller = readsSession ? identify(context, request) : null
     admit(spec, caller)
     response.locals['caller'] = caller
+    next()
+  }
+  const stillSignedIn: RequestHandler = async (request, _response, next) => {
+    await refuseEnded(request)
     next()
   }
   return [
@@ -69,8 +77,9 @@ function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
     ...(spec.middleware?.(context) ?? []),
     ...(readsSession ? [sessionHandler(context)] : []),
     guard,
-    // A body may take its time to arrive, and roles be taken away meanwhile.
+    // A body may take its time to arrive, and roles be taken away or the session be ended meanwhile.
     ...(spec.body ? [...jsonBody(spec.maxBodyBytes), guard] : []),
+    ...(spec.body && needsSession ? [stillSignedIn] : []),
     answerCall(spec, context),
   ]
 }

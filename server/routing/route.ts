@@ -33,6 +33,11 @@ export interface Call<A extends Access, Params, Query, Body> {
   response: Response
 }
 
+/** An answer that is JSON already, as the database wrote it. */
+export class JsonText {
+  constructor(readonly text: string) {}
+}
+
 export interface RouteSpec<
   A extends Access = Access,
   Params extends z.ZodType | undefined = z.ZodType | undefined,

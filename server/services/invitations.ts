@@ -8,8 +8,8 @@ import { mails } from '../email/mails.ts'
 import { queueMail } from '../email/queueMail.ts'
 import { makeFieldProblem, makeProblem, makeVersionConflict } from '../problems.ts'
 import { writeAudit } from './audit.ts'
-import { refuseUnlessStillMay } from './people.ts'
 import { hashCreation } from './records.ts'
+import { refuseUnlessStillMay } from './refuseUnlessStillMay.ts'
 import { makeToken } from './tokens.ts'
 
 export type InvitationRow = typeof invitations.$inferSelect
@@ -207,6 +207,25 @@ export function resendInvitation(context: AppContext, actor: Actor, id: string):
   return invitation
 }
 
+function withdraw(writer: Writer, actor: Actor, at: Date, before: InvitationRow): InvitationRow {
+  const { companyId, id, email } = before
+  const withdrawn = { withdrawnAt: at.toISOString(), version: before.version + 1 }
+  writer.update(invitations).set(withdrawn).where(keyOf(companyId, id)).run()
+  writeAudit(writer, actor, at, { action: 'invitation.withdrawn', subject: email, subjectId: id })
+  return { ...before, ...withdrawn }
+}
+
+/** Withdraws what an address was sent and has not answered, in the transaction that lets its person go. */
+export function withdrawInvitationsTo(writer: Writer, actor: Actor, at: Date, email: string): void {
+  const unanswered = and(isNull(invitations.acceptedAt), isNull(invitations.withdrawnAt))
+  writer
+    .select()
+    .from(invitations)
+    .where(and(eq(invitations.companyId, actor.companyId), eq(invitations.email, email), unanswered))
+    .all()
+    .forEach((row) => withdraw(writer, actor, at, row))
+}
+
 export function withdrawInvitation(context: AppContext, actor: Actor, id: string): Invitation {
   const { companyId } = actor
   return context.database.transact((writer) => {
@@ -215,9 +234,6 @@ export function withdrawInvitation(context: AppContext, actor: Actor, id: string
     const before = findInvitation(writer, companyId, id)
     if (before.acceptedAt !== null) throw makeVersionConflict(toInvitation(before, at))
     if (before.withdrawnAt !== null) return toInvitation(before, at)
-    const withdrawn = { withdrawnAt: at.toISOString(), version: before.version + 1 }
-    writer.update(invitations).set(withdrawn).where(keyOf(companyId, id)).run()
-    writeAudit(writer, actor, at, { action: 'invitation.withdrawn', subject: before.email, subjectId: id })
-    return toInvitation({ ...before, ...withdrawn }, at)
+    return toInvitation(withdraw(writer, actor, at, before), at)
   })
 }

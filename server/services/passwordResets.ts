@@ -123,13 +123,18 @@ export async function changePassword(
   if (!account) throw makeProblem('not-signed-in', 'Sign in first.')
   refuseCommonPassword(password, [account.name, account.email])
   const slowdown = slowdownOf(context)
-  await slowdown.admit(account.email, request.ip)
-  if (!(await passwords.verify(currentPassword, account.passwordHash))) {
-    slowdown.noteFailure(account.email, request.ip)
-    throw makeFieldProblem('/currentPassword', 'wrong-password', 'This is not your password.')
+  const finish = await slowdown.admit(account.email, request.ip)
+  let passwordHash: string
+  try {
+    if (!(await passwords.verify(currentPassword, account.passwordHash))) {
+      slowdown.noteFailure(account.email, request.ip)
+      throw makeFieldProblem('/currentPassword', 'wrong-password', 'This is not your password.')
+    }
+    slowdown.noteSuccess(account.email)
+    passwordHash = await passwords.hash(password)
+  } finally {
+    finish()
   }
-  slowdown.noteSuccess(account.email)
-  const passwordHash = await passwords.hash(password)
   database.transact((writer) => {
     if (findAccount(writer, accountId)?.passwordHash !== account.passwordHash) {
       throw makeFieldProblem('/currentPassword', 'wrong-password', 'Your password was changed meanwhile.')

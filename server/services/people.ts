@@ -1,6 +1,5 @@
 import { and, asc, eq, ne } from 'drizzle-orm'
-import { may } from '#shared/contracts/permissions.ts'
-import type { Permission, Role } from '#shared/contracts/permissions.ts'
+import type { Role } from '#shared/contracts/permissions.ts'
 import type { Person, PersonChange } from '#shared/contracts/people.ts'
 import type { Actor } from '../actor.ts'
 import type { AppContext } from '../context.ts'
@@ -8,6 +7,8 @@ import type { Writer } from '../db/client.ts'
 import { accounts, memberships } from '../db/schema/index.ts'
 import { makeProblem, makeVersionConflict } from '../problems.ts'
 import { changesBetween, writeAudit } from './audit.ts'
+import { withdrawInvitationsTo } from './invitations.ts'
+import { refuseUnlessStillMay } from './refuseUnlessStillMay.ts'
 import { endSessionsInCompany } from './sessions.ts'
 
 type Reader = Pick<Writer, 'select'>
@@ -43,20 +44,6 @@ function findPerson(reader: Reader, companyId: string, id: string) {
   if (!found) throw makeProblem('not-found', 'There is nothing at this address.')
   const { accountId, ...person } = found
   return { accountId, person }
-}
-
-/**
- * Whoever was let in may have lost the role while the body was still on its way; what gives others rights looks again
- * under the write lock.
- */
-export function refuseUnlessStillMay(reader: Reader, actor: Actor, permission: Permission): void {
-  const held = reader
-    .select({ roles: memberships.roles })
-    .from(memberships)
-    .where(and(eq(memberships.id, actor.membershipId), eq(memberships.state, 'active')))
-    .get()
-  if (held && may(held.roles, permission)) return
-  throw makeProblem('forbidden', 'Your roles in this company do not include this.')
 }
 
 function isOnlyOne(reader: Reader, companyId: string, personId: string, role: Role): boolean {
@@ -124,8 +111,13 @@ export function changePerson(
       .set({ ...wanted, version: after.version })
       .where(eq(memberships.id, personId))
       .run()
+    const at = now()
     if (after.state === 'deactivated') endSessionsInCompany(writer, accountId, companyId)
-    auditPerson(writer, actor, now(), before, after)
+    auditPerson(writer, actor, at, before, after)
+    // One from before they were taken back would let them in again.
+    if (before.state === 'active' && after.state === 'deactivated') {
+      withdrawInvitationsTo(writer, actor, at, before.email)
+    }
     return after
   })
 }

@@ -1,12 +1,13 @@
-import { and, asc, eq, isNull, sql } from 'drizzle-orm'
+import { and, count, eq, isNull, sql } from 'drizzle-orm'
+import { recordLimits } from '#shared/contracts/limits.ts'
 import type { FieldError } from '#shared/contracts/problems.ts'
 import type { RigProfile, RigSummary } from '#shared/contracts/rigs.ts'
 import type { Actor } from '../actor.ts'
 import type { Database } from '../db/client.ts'
 import { rigs } from '../db/schema/index.ts'
 import { compressorKind } from './compressors.ts'
-import { readPage } from './pages.ts'
-import type { Page, PageQuery } from './pages.ts'
+import { decodeCursor, encodeCursor } from './pages.ts'
+import type { Line, PageQuery } from './pages.ts'
 import { isAfter, oncePerDatabase, queriesOf } from './recordQueries.ts'
 import type { RecordRow } from './recordQueries.ts'
 import type { Context, RecordKind } from './records.ts'
@@ -82,49 +83,46 @@ export const rigKind: RecordKind<RigProfile, RigRow> = {
   findFaults: findUnknownReferences,
 }
 
-const summaryColumns = {
-  id: rigs.id,
-  name: rigs.name,
-  version: rigs.version,
-  archivedAt: rigs.archivedAt,
-  updatedAt: rigs.updatedAt,
-}
-
+/** A page of the list as the database writes it: of all that is asked for, this is asked for most. */
 const summaryQueriesIn = oncePerDatabase(({ queries }) => {
   const isListed = and(eq(rigs.companyId, sql.placeholder('companyId')), isNull(rigs.deletedAt))
+  const isNext = and(isListed, isAfter(rigs))
+  const inOrder = (where: typeof isListed) =>
+    sql`from ${rigs} where ${where} order by ${rigs.name}, ${rigs.id}`
   const page = (where: typeof isListed) =>
     queries
-      .select(summaryColumns)
-      .from(rigs)
-      .where(where)
-      .orderBy(asc(rigs.name), asc(rigs.id))
-      .limit(sql.placeholder('limit'))
+      .select({
+        items: sql<string>`json_group_array(json_object('id', id, 'name', name, 'version', version,
+          'isArchived', iif(archived_at is null, json('false'), json('true')), 'updatedAt', updated_at))`,
+        count: count(),
+      })
+      .from(
+        sql`(select id, name, version, archived_at, updated_at ${inOrder(where)} limit ${sql.placeholder('limit')})`,
+      )
       .prepare()
-  return { firstPage: page(isListed), nextPage: page(and(isListed, isAfter(rigs))) }
+  return {
+    firstPage: page(isListed),
+    nextPage: page(isNext),
+    next: queries.select({ id: rigs.id }).from(rigs).where(isNext).limit(1).prepare(),
+  }
 })
 
-type SummaryValues = [id: string, name: string, version: number, archivedAt: string | null, updatedAt: string]
-
-/**
- * The lines of the list: what is needed to choose a rig, and no more. It is asked for more than all else together, so
- * the driver's own rows are read, in the order of summaryColumns.
- */
-export function listRigs(
+/** The lines of the list: what is needed to choose a rig, and no more; a page of RigSummary as JSON. */
+export function writeRigList(
   { database }: Pick<Context, 'database'>,
   { companyId }: Pick<Actor, 'companyId'>,
-  query: PageQuery,
-): Page<RigSummary> {
-  const { firstPage, nextPage } = summaryQueriesIn(database)
-  return readPage(query, (limit, after) => {
-    const rows = after
-      ? nextPage.values({ companyId, limit, afterName: after.name, afterId: after.id })
-      : firstPage.values({ companyId, limit })
-    return (rows as SummaryValues[]).map(([id, name, version, archivedAt, updatedAt]) => ({
-      id,
-      name,
-      version,
-      isArchived: archivedAt !== null,
-      updatedAt,
-    }))
-  })
+  { cursor, limit = recordLimits.pageSize }: PageQuery,
+): string {
+  const { firstPage, nextPage, next } = summaryQueriesIn(database)
+  const placeAfter = ({ name, id }: Line) => ({ companyId, afterName: name, afterId: id })
+  const page =
+    cursor === undefined
+      ? firstPage.get({ companyId, limit })
+      : nextPage.get({ ...placeAfter(decodeCursor(cursor)), limit })
+  const { items = '[]', count = 0 } = page ?? {}
+  if (count < limit) return `{"items":${items},"nextCursor":null}`
+  // No text of a name can hold this: its quotes would be escaped.
+  const last = JSON.parse(items.slice(items.lastIndexOf('{"id":'), -1)) as RigSummary
+  const nextCursor = next.get(placeAfter(last)) ? encodeCursor(last) : null
+  return `{"items":${items},"nextCursor":${JSON.stringify(nextCursor)}}`
 }

@@ -13,6 +13,8 @@ export const sessionIdleMs = 14 * 24 * 3600_000
 export const sessionAbsoluteMs = 90 * 24 * 3600_000
 /** a session in use is written down as used no more often than this */
 const touchEveryMs = 60_000
+/** more than can be under way at once; requests that are broken off leave theirs behind */
+const mostRemembered = 10_000
 
 export function hashSessionId(sessionId: string): string {
   return createHash('sha256').update(sessionId).digest('hex')
@@ -37,6 +39,8 @@ function prepareQueries({ queries }: Database) {
 /** Keeps the sessions of express-session in our own database, so that they outlive a restart. */
 export class SessionStore extends Store {
   private readonly prepared: ReturnType<typeof prepareQueries>
+  /** of sessions that a request under way has just read, by the hash of their id */
+  private readonly lastUsed = new Map<string, string>()
 
   constructor(private readonly context: Pick<AppContext, 'database' | 'now'>) {
     super()
@@ -51,6 +55,8 @@ export class SessionStore extends Store {
       const now = this.context.now()
       const oldest = new Date(now.getTime() - sessionAbsoluteMs).toISOString()
       if (row.expiresAt > now.toISOString() && row.createdAt > oldest) {
+        if (this.lastUsed.size >= mostRemembered) this.lastUsed.clear()
+        this.lastUsed.set(idHash, row.lastUsedAt)
         return JSON.parse(row.data) as SessionData
       }
       writeIfPossible(() => {
@@ -89,8 +95,9 @@ export class SessionStore extends Store {
       const idHash = hashSessionId(sessionId)
       const now = this.context.now()
       const justNow = new Date(now.getTime() - touchEveryMs).toISOString()
-      const row = this.prepared.find.get({ idHash })
-      if (!row || row.lastUsedAt > justNow) return
+      const lastUsedAt = this.lastUsed.get(idHash) ?? this.prepared.find.get({ idHash })?.lastUsedAt
+      this.lastUsed.delete(idHash)
+      if (lastUsedAt === undefined || lastUsedAt > justNow) return
       const expiresAt = new Date(now.getTime() + sessionIdleMs).toISOString()
       writeIfPossible(() => {
         this.context.database.queries

@@ -27,7 +27,8 @@ function isEnded(request: Request): Promise<boolean> {
   })
 }
 
-async function refuseEnded(request: Request): Promise<void> {
+/** Refuses what comes in a session that has ended since the head of the request was read. */
+export async function refuseEnded(request: Request): Promise<void> {
   if (await isEnded(request)) throw makeProblem('not-signed-in', 'Sign in first.')
 }
 
@@ -92,18 +93,22 @@ export async function signIn(
 ): Promise<Session> {
   const { queries } = context.database
   const slowdown = slowdownOf(context)
-  await slowdown.admit(email, request.ip)
-  const hash = findAccountByEmail(queries, email)?.passwordHash ?? null
-  const isRight = await context.passwords.verify(password, hash)
-  // Read again: while it was being verified the password may have been changed.
-  const account = findAccountByEmail(queries, email)
-  if (!isRight || account?.passwordHash !== hash) {
-    slowdown.noteFailure(email, request.ip)
-    if (account) noteFailedSignIn(context, account)
-    throw wrongCredentials()
+  const finish = await slowdown.admit(email, request.ip)
+  try {
+    const hash = findAccountByEmail(queries, email)?.passwordHash ?? null
+    const isRight = await context.passwords.verify(password, hash)
+    // Read again: while it was being verified the password may have been changed.
+    const account = findAccountByEmail(queries, email)
+    if (!isRight || account?.passwordHash !== hash) {
+      slowdown.noteFailure(email, request.ip)
+      if (account) noteFailedSignIn(context, account)
+      throw wrongCredentials()
+    }
+    slowdown.noteSuccess(email)
+    return await openSession(context, request, account)
+  } finally {
+    finish()
   }
-  slowdown.noteSuccess(email)
-  return openSession(context, request, account)
 }
 
 /** Signs somebody in of whom it is already known that they are who they say. */

@@ -23,6 +23,23 @@ function keyOfAddress(address: string | undefined): string {
   return ipKeyGenerator(address ?? '')
 }
 
+/** How many there are of each of a few keys just now. */
+class Counts {
+  private readonly counts = new Map<string, number>()
+
+  read(key: string): number {
+    return this.counts.get(key) ?? 0
+  }
+
+  add(step: 1 | -1, ...keys: string[]): void {
+    for (const key of keys) {
+      const count = this.read(key) + step
+      if (count > 0) this.counts.set(key, count)
+      else this.counts.delete(key)
+    }
+  }
+}
+
 /**
  * Makes whoever guesses passwords slow, by the account they guess at and by the address they come from, and shuts
  * nobody out. An address without an account is counted like any other, so that a wait tells nothing.
@@ -30,7 +47,9 @@ function keyOfAddress(address: string | undefined): string {
 export class SignInSlowdown {
   private readonly accounts = new RecentCounts(forgetAfterMs)
   private readonly addresses = new RecentCounts(forgetAfterMs)
-  private readonly waiting = new Map<string, number>()
+  /** tries of which it is not known yet whether they fail, waiting or being verified */
+  private readonly underway = new Counts()
+  private readonly waiting = new Counts()
   private waitingInAll = 0
 
   constructor(
@@ -43,33 +62,44 @@ export class SignInSlowdown {
     return this.accounts.size + this.addresses.size
   }
 
-  /** Waits as long as this try has to; refuses it when too many are waiting already. */
-  async admit(email: string, address: string | undefined): Promise<void> {
+  /**
+   * Waits as long as this try has to; refuses it when too many are waiting already. What it answers is called once it is
+   * known how the try ended.
+   */
+  async admit(email: string, address: string | undefined): Promise<() => void> {
     const at = this.now()
     const from = keyOfAddress(address)
     const pair = `${from} ${email}`
-    // Tries that wait count as made, or a hundred sent at once would all be let through after the shortest wait.
-    const byAccount = this.accounts.read(email, at)
-    const pending = byAccount >= freeTries.account ? (this.waiting.get(pair) ?? 0) : 0
+    // Tries that are under way count as made, or a hundred sent at once would all be let through like the first.
     const milliseconds = Math.max(
-      waitAfter(byAccount + pending, freeTries.account),
-      waitAfter(this.addresses.read(from, at), freeTries.address),
+      waitAfter(this.accounts.read(email, at) + this.underway.read(pair), freeTries.account),
+      waitAfter(this.addresses.read(from, at) + this.underway.read(from), freeTries.address),
     )
-    if (milliseconds === 0) return
-    if (
-      (this.waiting.get(pair) ?? 0) >= mostWaiting.accountFromAddress ||
-      (this.waiting.get(from) ?? 0) >= mostWaiting.address ||
-      this.waitingInAll >= mostWaiting.all
-    ) {
-      const detail = 'Too many tries at once. Wait a moment, then try again.'
-      throw makePassingProblem('too-many-requests', detail, longestWaitMs / 1000)
-    }
-    this.countWaiting(1, pair, from)
+    if (milliseconds > 0) this.refuseCrowd(pair, from)
+    this.underway.add(1, pair, from)
+    const finish = () => this.underway.add(-1, pair, from)
+    if (milliseconds === 0) return finish
+    this.waiting.add(1, pair, from)
+    this.waitingInAll += 1
     try {
       await this.wait(milliseconds)
     } finally {
-      this.countWaiting(-1, pair, from)
+      this.waiting.add(-1, pair, from)
+      this.waitingInAll -= 1
     }
+    return finish
+  }
+
+  private refuseCrowd(pair: string, from: string): void {
+    if (
+      this.waiting.read(pair) < mostWaiting.accountFromAddress &&
+      this.waiting.read(from) < mostWaiting.address &&
+      this.waitingInAll < mostWaiting.all
+    ) {
+      return
+    }
+    const detail = 'Too many tries at once. Wait a moment, then try again.'
+    throw makePassingProblem('too-many-requests', detail, longestWaitMs / 1000)
   }
 
   noteFailure(email: string, address: string | undefined): void {
@@ -80,15 +110,6 @@ export class SignInSlowdown {
   /** The address stays slow: one right password must not pay for guesses at the others. */
   noteSuccess(email: string): void {
     this.accounts.clear(email)
-  }
-
-  private countWaiting(step: 1 | -1, ...keys: string[]): void {
-    this.waitingInAll += step
-    for (const key of keys) {
-      const count = (this.waiting.get(key) ?? 0) + step
-      if (count > 0) this.waiting.set(key, count)
-      else this.waiting.delete(key)
-    }
   }
 }
 

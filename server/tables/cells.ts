@@ -2,6 +2,7 @@ import type { Range } from '#shared/contracts/limits.ts'
 import type { FieldError } from '#shared/contracts/problems.ts'
 import { findUnit, fromBase, parseQuantity, snapBoreMm } from '#shared/units/index.ts'
 import type { ParseProblem, QuantityKind, Unit } from '#shared/units/index.ts'
+import { readCsvText } from '../csv.ts'
 
 export type Reading = { ok: true; value: unknown } | ({ ok: false } & Pick<FieldError, 'code' | 'message'>)
 
@@ -84,9 +85,10 @@ export const numberCell: Cell = {
   units: {},
   description: 'a plain number',
   read(text) {
-    const read = parseQuantity('number', text.replace(/\s*%$/, ''), { system: 'us' })
+    const isPercent = text.endsWith('%')
+    const read = parseQuantity('number', isPercent ? text.slice(0, -1).trimEnd() : text, { system: 'us' })
     if (!read.ok) return refuse('not-a-number', `${quote(text)} is not a plain number.`)
-    return accept(text.endsWith('%') ? read.value / 100 : read.value)
+    return accept(isPercent ? read.value / 100 : read.value)
   },
   write: (value) => value as number | null,
 }
@@ -94,8 +96,7 @@ export const numberCell: Cell = {
 export const textCell: Cell = {
   units: {},
   description: 'text',
-  // The apostrophe that keeps a spreadsheet from running a text is not part of it.
-  read: (text) => accept(text.replace(/^'(?=[=+\-@])/, '')),
+  read: (text) => accept(readCsvText(text)),
   write: (value) => value as string | null,
 }
 

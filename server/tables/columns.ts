@@ -13,9 +13,12 @@ export interface Column {
 /** A column of a file, under the heading as it is written there. */
 export interface FoundColumn {
   column: Column
+  /** what of it is shown with every error under it */
   heading: string
   unit: string | null
 }
+
+const longestShown = 60
 
 /** `Free air (cfm)` and `free_air_cfm` are one heading. */
 export function normaliseHeading(heading: string): string {
@@ -34,10 +37,11 @@ export function headingOf({ field, cell }: Column): string {
 
 export function findColumn(columns: readonly Column[], heading: string): FoundColumn | null {
   const name = normaliseHeading(heading)
+  const shown = heading.slice(0, longestShown)
   for (const column of columns) {
-    if (name === column.field) return { column, heading, unit: null }
+    if (name === column.field) return { column, heading: shown, unit: null }
     for (const [ending, unit] of Object.entries(column.cell.units)) {
-      if (name === `${column.field}_${ending}`) return { column, heading, unit }
+      if (name === `${column.field}_${ending}`) return { column, heading: shown, unit }
     }
   }
   return null
@@ -55,18 +59,17 @@ export function findColumns(
   const seen = new Map<Column, string>()
   const found = headings.map((heading): FoundColumn | null => {
     const match = findColumn(columns, heading)
+    const shown = heading.slice(0, longestShown)
     if (match === null) {
       if (heading !== '' && !unreadFields.includes(normaliseHeading(heading))) {
-        const message = `“${heading.slice(0, 60)}” is not a column that can be read.`
-        errors.push({ path: heading.slice(0, 60), code: 'unknown-column', message })
+        const message = `“${shown}” is not a column that can be read.`
+        errors.push({ path: shown, code: 'unknown-column', message })
       }
       return null
     }
     const before = seen.get(match.column)
-    if (before === undefined) seen.set(match.column, heading)
-    else {
-      errors.push({ path: heading, code: 'invalid', message: `“${before}” and “${heading}” say the same.` })
-    }
+    if (before === undefined) seen.set(match.column, shown)
+    else errors.push({ path: shown, code: 'invalid', message: `“${before}” and “${shown}” say the same.` })
     return match
   })
   for (const column of columns) {

@@ -1,6 +1,9 @@
 import { CsvError, parse } from 'csv-parse/sync'
 import type { FieldError } from '#shared/contracts/problems.ts'
 
+/** a curve of as many points as there may be takes half of it */
+const longestCell = 2000
+
 export interface TableRow {
   /** of the file, counted from 1 */
   line: number
@@ -29,7 +32,10 @@ export function readTable(text: string, mostRows: number): { rows: TableRow[]; e
     const rows = records
       .map(({ record, info }) => ({ line: info.lines, cells: record }))
       .filter(({ cells }) => cells.some((cell) => cell !== ''))
-    return { rows, error: null }
+    const tooLong = rows.find(({ cells }) => cells.some((cell) => cell.length > longestCell))
+    if (!tooLong) return { rows, error: null }
+    const message = `Line ${tooLong.line} has a cell of more than ${longestCell} characters.`
+    return { rows: [], error: { path: '', code: 'too-long', message } }
   } catch (error) {
     if (!(error instanceof CsvError)) throw error
     const line = typeof error['lines'] === 'number' ? ` near line ${error['lines']}` : ''
