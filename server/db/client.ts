@@ -27,7 +27,8 @@ export interface Database {
 
 /** Opens the one database of the installation, makes it if need be, and brings it to the newest migration. */
 export function openDatabase(dataDir: string, migrationsFolder = defaultMigrationsFolder): Database {
-  mkdirSync(dataDir, { recursive: true })
+  // What is in it is nobody's on this machine but the account's that runs us.
+  mkdirSync(dataDir, { recursive: true, mode: 0o700 })
   const connection = new BetterSqlite(join(dataDir, databaseFileName))
   try {
     connection.pragma('journal_mode = WAL')

@@ -132,7 +132,7 @@ export const accountRoutes = [
     body: profileInputSchema,
     answer: sessionSchema,
     handle: ({ context, caller, body }) => {
-      changeProfile(context, caller.accountId, body)
+      changeProfile(context, caller, body)
       return readSession(context, caller.accountId, 'companyId' in caller ? caller.companyId : null)
     },
   }),

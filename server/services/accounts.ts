@@ -1,11 +1,12 @@
 import { and, asc, desc, eq, isNotNull } from 'drizzle-orm'
 import type { ProfileInput, Session } from '#shared/contracts/accounts.ts'
 import type { AuditAction } from '#shared/contracts/people.ts'
+import type { SignedIn } from '../actor.ts'
 import type { AppContext } from '../context.ts'
 import type { Writer } from '../db/client.ts'
 import { accounts, companies, memberships } from '../db/schema/index.ts'
 import { makeProblem } from '../problems.ts'
-import { writeAudit } from './audit.ts'
+import { changesBetween, writeAudit } from './audit.ts'
 
 export type Account = typeof accounts.$inferSelect
 
@@ -91,6 +92,21 @@ export function readSession(context: AppContext, accountId: string, companyId: s
   }
 }
 
-export function changeProfile({ database }: AppContext, accountId: string, profile: ProfileInput): void {
-  database.queries.update(accounts).set(profile).where(eq(accounts.id, accountId)).run()
+/** A new name is noted in every company where the old one is known. */
+export function changeProfile(
+  { database, now }: AppContext,
+  { accountId, email }: SignedIn,
+  profile: ProfileInput,
+): void {
+  database.transact((writer) => {
+    const before = findAccount(writer, accountId)
+    writer.update(accounts).set(profile).where(eq(accounts.id, accountId)).run()
+    if (!before || before.name === profile.name) return
+    const changes = changesBetween({ name: before.name }, { name: profile.name })
+    const active = and(eq(memberships.accountId, accountId), eq(memberships.state, 'active'))
+    for (const { companyId } of writer.select().from(memberships).where(active).all()) {
+      const author = { accountId, name: before.name, companyId }
+      writeAudit(writer, author, now(), { action: 'account.renamed', subject: email, changes })
+    }
+  })
 }

@@ -5,16 +5,17 @@ import type { AuditEntry, AuditFilter, AuditQuery } from '#shared/contracts/peop
 import type { Actor } from '../actor.ts'
 import { csvLine } from '../csv.ts'
 import type { Database } from '../db/client.ts'
-import { auditEntries } from '../db/schema/index.ts'
+import { accounts, auditEntries } from '../db/schema/index.ts'
 import { makeFieldProblem } from '../problems.ts'
 
 const rowsAtOnce = 500
-const columns = ['at', 'who', 'action', 'subject', 'subjectId', 'changes']
+const columns = ['at', 'who', 'address', 'action', 'subject', 'subjectId', 'changes']
 
 const entryColumns = {
   id: auditEntries.id,
   at: auditEntries.at,
   actorName: auditEntries.actorName,
+  actorEmail: accounts.email,
   action: auditEntries.action,
   subject: auditEntries.subject,
   subjectId: auditEntries.subjectId,
@@ -57,6 +58,7 @@ function findBefore({ queries }: Database, condition: SQL | undefined, id: numbe
   return queries
     .select(entryColumns)
     .from(auditEntries)
+    .leftJoin(accounts, eq(accounts.id, auditEntries.actorId))
     .where(and(condition, id === null ? undefined : lt(auditEntries.id, id)))
     .orderBy(desc(auditEntries.id))
     .limit(limit)
@@ -81,23 +83,36 @@ export function readAuditPage(
   return { items, nextCursor: found.length > limit && last ? encodeCursor(last.id) : null }
 }
 
-/** The whole log as CSV, a piece at a time; what is written meanwhile is newer than its first line. */
+/** The place from which the log goes back to its beginning as it is now. */
+export function findAuditEnd({ queries }: Database, { companyId }: Pick<Actor, 'companyId'>): number {
+  const last = queries
+    .select({ id: auditEntries.id })
+    .from(auditEntries)
+    .where(eq(auditEntries.companyId, companyId))
+    .orderBy(desc(auditEntries.id))
+    .limit(1)
+    .get()
+  return (last?.id ?? 0) + 1
+}
+
+/** The log as CSV back from its end, a piece at a time; what is written meanwhile is newer than its first line. */
 export function* writeAuditCsv(
   database: Database,
   { companyId }: Pick<Actor, 'companyId'>,
   filter: AuditFilter,
+  end: number | null = null,
 ): Generator<string> {
   const condition = conditionOf(companyId, filter)
   // Spreadsheets read UTF-8 as UTF-8 only where it says so.
   yield `\ufeff${csvLine(columns)}`
-  let before: number | null = null
+  let before = end
   for (;;) {
     const entries = findBefore(database, condition, before, rowsAtOnce)
     const last = entries.at(-1)
     if (!last) return
     yield entries
-      .map(({ at, actorName, action, subject, subjectId, changes }) =>
-        csvLine([at, actorName, action, subject, subjectId, JSON.stringify(changes)]),
+      .map(({ at, actorName, actorEmail, action, subject, subjectId, changes }) =>
+        csvLine([at, actorName, actorEmail ?? '', action, subject, subjectId, JSON.stringify(changes)]),
       )
       .join('')
     before = last.id

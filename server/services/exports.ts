@@ -1,11 +1,12 @@
+import { Readable } from 'node:stream'
 import { buffer } from 'node:stream/consumers'
 import { ZipArchive } from 'archiver'
 import { may } from '#shared/contracts/permissions.ts'
 import type { Actor } from '../actor.ts'
 import { describeTable, writeTable } from '../tables/exportTable.ts'
-import type { ExportFile, ExportTable } from '../tables/exportTable.ts'
+import type { ExportTable } from '../tables/exportTable.ts'
 import { writeAudit } from './audit.ts'
-import { writeAuditCsv } from './auditLog.ts'
+import { findAuditEnd, writeAuditCsv } from './auditLog.ts'
 import { compressorKind } from './compressors.ts'
 import {
   makeCompanyTable,
@@ -40,18 +41,24 @@ function nameBy(records: { id: string; name: string }[]): (id: string | null) =>
   return (id) => (id === null ? null : (names.get(id) ?? id))
 }
 
+interface ZippedFile {
+  name: string
+  content: string | Readable
+}
+
 /** Every file of the export, all of one moment, and the note that it was made. */
-function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
+function readFiles({ database, now }: Context, actor: Actor): ZippedFile[] {
   const { companyId, roles } = actor
   return database.transact((writer) => {
     const compressors = listRecords(compressorKind, database, companyId)
     const sites = listRecords(siteKind, database, companyId)
     const rigs = listRecords(rigKind, database, companyId)
     const names: Names = { compressor: nameBy(compressors), site: nameBy(sites), rig: nameBy(rigs) }
-    const files: ExportFile[] = []
+    const files: ZippedFile[] = []
     const about: string[] = [introduction]
     const add = <Row>(table: ExportTable<Row>) => {
-      files.push(writeTable(table, roles))
+      const { name, text } = writeTable(table, roles)
+      files.push({ name, content: text })
       about.push(describeTable(table, roles))
     }
     add(makeCompanyTable(database, companyId))
@@ -62,10 +69,12 @@ function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
     add(makeOutletTable(rigs))
     add(makeTodayTable(database, companyId, names))
     if (may(roles, 'read-audit')) {
-      files.push({ name: 'audit.csv', text: [...writeAuditCsv(database, actor, {})].join('') })
+      // It may be long, and is never changed: it is read while the others' requests go on.
+      const log = writeAuditCsv(database, actor, {}, findAuditEnd(database, actor))
+      files.push({ name: 'audit.csv', content: Readable.from(log) })
       about.push('audit.csv\r\n  Who did what, when (UTC); changes as JSON, from what to what.\r\n')
     }
-    files.push({ name: 'readme.txt', text: `\ufeff${about.join('\r\n')}` })
+    files.push({ name: 'readme.txt', content: `\ufeff${about.join('\r\n')}` })
     writeAudit(writer, actor, now(), {
       action: 'data.exported',
       subject: files.map(({ name }) => name).join(' '),
@@ -78,7 +87,7 @@ function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
 export async function exportData(context: Context, actor: Actor): Promise<Buffer> {
   const files = readFiles(context, actor)
   const archive = new ZipArchive({ zlib: { level: 6 } })
-  for (const { name, text } of files) archive.append(text, { name, date: context.now() })
+  for (const { name, content } of files) archive.append(content, { name, date: context.now() })
   const [zip] = await Promise.all([buffer(archive), archive.finalize()])
   return zip
 }

@@ -1,4 +1,5 @@
 import { and, count, desc, eq, gt, inArray, isNull, ne } from 'drizzle-orm'
+import type { SQL } from 'drizzle-orm'
 import type { Invitation, InvitationInput, InvitationState } from '#shared/contracts/people.ts'
 import type { Actor } from '../actor.ts'
 import type { AppContext } from '../context.ts'
@@ -215,15 +216,34 @@ function withdraw(writer: Writer, actor: Actor, at: Date, before: InvitationRow)
   return { ...before, ...withdrawn }
 }
 
-/** Withdraws what an address was sent and has not answered, in the transaction that lets its person go. */
-export function withdrawInvitationsTo(writer: Writer, actor: Actor, at: Date, email: string): void {
+function withdrawUnanswered(writer: Writer, actor: Actor, at: Date, which: SQL): void {
   const unanswered = and(isNull(invitations.acceptedAt), isNull(invitations.withdrawnAt))
   writer
     .select()
     .from(invitations)
-    .where(and(eq(invitations.companyId, actor.companyId), eq(invitations.email, email), unanswered))
+    .where(and(eq(invitations.companyId, actor.companyId), which, unanswered))
     .all()
     .forEach((row) => withdraw(writer, actor, at, row))
+}
+
+/** Withdraws what an address was sent and has not answered, in the transaction that lets its person go. */
+export function withdrawInvitationsTo(writer: Writer, actor: Actor, at: Date, email: string): void {
+  withdrawUnanswered(writer, actor, at, eq(invitations.email, email))
+}
+
+/** Withdraws what somebody sent who may invite no more: it might go to another address of their own. */
+export function withdrawInvitationsBy(writer: Writer, actor: Actor, at: Date, senderId: string): void {
+  const sent = writer
+    .select({ id: auditEntries.subjectId })
+    .from(auditEntries)
+    .where(
+      and(
+        eq(auditEntries.companyId, actor.companyId),
+        eq(auditEntries.actorId, senderId),
+        inArray(auditEntries.action, ['invitation.sent', 'invitation.resent']),
+      ),
+    )
+  withdrawUnanswered(writer, actor, at, inArray(invitations.id, sent))
 }
 
 export function withdrawInvitation(context: AppContext, actor: Actor, id: string): Invitation {

@@ -1,4 +1,5 @@
 import { and, asc, eq, ne } from 'drizzle-orm'
+import { may } from '#shared/contracts/permissions.ts'
 import type { Role } from '#shared/contracts/permissions.ts'
 import type { Person, PersonChange } from '#shared/contracts/people.ts'
 import type { Actor } from '../actor.ts'
@@ -7,7 +8,7 @@ import type { Writer } from '../db/client.ts'
 import { accounts, memberships } from '../db/schema/index.ts'
 import { makeProblem, makeVersionConflict } from '../problems.ts'
 import { changesBetween, writeAudit } from './audit.ts'
-import { withdrawInvitationsTo } from './invitations.ts'
+import { withdrawInvitationsBy, withdrawInvitationsTo } from './invitations.ts'
 import { refuseUnlessStillMay } from './refuseUnlessStillMay.ts'
 import { endSessionsInCompany } from './sessions.ts'
 
@@ -118,6 +119,8 @@ export function changePerson(
     if (before.state === 'active' && after.state === 'deactivated') {
       withdrawInvitationsTo(writer, actor, at, before.email)
     }
+    const mayInvite = ({ roles, state }: Person) => state === 'active' && may(roles, 'manage-people')
+    if (mayInvite(before) && !mayInvite(after)) withdrawInvitationsBy(writer, actor, at, accountId)
     return after
   })
 }

@@ -10,7 +10,11 @@ import { makeProblem } from '../problems.ts'
  * Whoever was let in may have lost the role while the body was still on its way; what gives others rights looks again
  * under the write lock.
  */
-export function refuseUnlessStillMay(reader: Pick<Writer, 'select'>, actor: Actor, permission: Permission): void {
+export function refuseUnlessStillMay(
+  reader: Pick<Writer, 'select'>,
+  actor: Actor,
+  permission: Permission,
+): void {
   const held = reader
     .select({ roles: memberships.roles })
     .from(memberships)

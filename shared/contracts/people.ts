@@ -55,6 +55,7 @@ export const auditActions = [
   'account.signed-out',
   'account.password-changed',
   'account.password-reset',
+  'account.renamed',
   'person.joined',
   'person.roles-changed',
   'person.deactivated',
@@ -88,7 +89,10 @@ export const auditActions = [
 export const auditEntrySchema = z.strictObject({
   id: z.number().int(),
   at: z.string(),
+  /** as they called themselves then */
   actorName: z.string(),
+  /** who that is: a name can be changed, the confirmed address not */
+  actorEmail: z.string().nullable(),
   action: z.enum(auditActions),
   /** what it was done to: a rig's name, a person's address */
   subject: z.string(),

@@ -9,6 +9,7 @@ const known: Record<AuditAction, true> = {
   'account.signed-out': true,
   'account.password-changed': true,
   'account.password-reset': true,
+  'account.renamed': true,
   'person.joined': true,
   'person.roles-changed': true,
   'person.deactivated': true,

@@ -78,4 +78,18 @@ describe('the environment', () => {
     expect(complaints.join('\n')).toMatch(/PUBLIC_URL is missing/)
     expect(complaintsOf({ NODE_ENV: 'production', ...productionSecrets })).toEqual([])
   })
+
+  it.each([
+    ['http://sixteenth.example.com', 1],
+    ['http://192.0.2.1:3000', 1],
+    ['https://192.0.2.1', 0],
+    ['http://localhost:3000', 0],
+    ['http://127.0.0.1', 0],
+    ['http://[::1]:3000', 0],
+  ])('in production is reached over TLS, but on its own machine: %s', (PUBLIC_URL, count) => {
+    const complaints = complaintsOf({ NODE_ENV: 'production', ...productionSecrets, PUBLIC_URL })
+    expect(complaints).toHaveLength(count)
+    for (const complaint of complaints) expect(complaint).toMatch(/^PUBLIC_URL must begin with https/)
+    expect(complaintsOf({ PUBLIC_URL })).toEqual([])
+  })
 })

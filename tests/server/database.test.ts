@@ -1,5 +1,5 @@
 import { companies } from '../../server/db/schema/index.ts'
-import { rmSync } from 'node:fs'
+import { rmSync, statSync } from 'node:fs'
 import { join } from 'node:path'
 import BetterSqlite from 'better-sqlite3'
 import { afterEach, beforeEach, describe, expect, it } from 'vitest'
@@ -48,6 +48,12 @@ describe('the database', () => {
     expect(first.length).toBeGreaterThan(0)
     openDatabase(dataDir).close()
     expect(listMigrations()).toEqual(first)
+  })
+
+  it('stands in a folder that no other account of the machine can look into', () => {
+    const folder = join(dataDir, 'of', 'our own')
+    openDatabase(folder).close()
+    expect(statSync(folder).mode & 0o077).toBe(0)
   })
 
   it('keeps what was written over a restart, the last value of each key', () => {

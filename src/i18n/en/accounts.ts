@@ -199,6 +199,7 @@ export const accounts = {
       'account_signed-out': 'signed out',
       'account_password-changed': 'changed their password',
       'account_password-reset': 'set a new password by mail',
+      account_renamed: 'changed their own name',
       person_joined: 'joined',
       'person_roles-changed': 'changed roles',
       person_deactivated: 'deactivated somebody',
@@ -239,7 +240,8 @@ export const accounts = {
   },
   problems: {
     required: 'Fill this in.',
-    'too-long': 'This is too long. A password may have 72 bytes; accented letters count two.',
+    'too-long': 'This is too long: {most} characters at most.',
+    'password-too-long': 'This is too long. A password may have 72 bytes; accented letters count two.',
     'too-short': 'At least 10 characters.',
     'too-common': 'Too many people use this one, so it is guessed first. Choose another.',
     'too-few': 'Choose at least one.',

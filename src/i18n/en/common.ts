@@ -12,6 +12,8 @@ export const common = {
     sources: 'Sources',
     settings: 'Settings',
     skip: 'Skip to the verdict',
+    unreached: 'No connection: that page could not be fetched.',
+    tryAgain: 'Try again',
   },
   verdicts: {
     holds: 'Holds',

@@ -198,6 +198,7 @@ export const accounts = {
       'account_signed-out': 'salió',
       'account_password-changed': 'cambió su contraseña',
       'account_password-reset': 'puso otra contraseña por correo',
+      account_renamed: 'cambió su propio nombre',
       person_joined: 'se unió',
       'person_roles-changed': 'cambió funciones',
       person_deactivated: 'dio de baja a alguien',
@@ -238,7 +239,8 @@ export const accounts = {
   },
   problems: {
     required: 'Falta este dato.',
-    'too-long': 'Es muy largo. Una contraseña llega a 72 bytes; las letras con acento cuentan dos.',
+    'too-long': 'Es muy largo: {most} caracteres como mucho.',
+    'password-too-long': 'Es muy larga. Una contraseña llega a 72 bytes; las letras con acento cuentan dos.',
     'too-short': 'De 10 caracteres para arriba.',
     'too-common': 'La usa demasiada gente y es de las primeras que se adivinan. Elija otra.',
     'too-few': 'Elija al menos una.',

@@ -12,6 +12,8 @@ export const common = {
     sources: 'Fuentes',
     settings: 'Ajustes',
     skip: 'Ir al resultado',
+    unreached: 'Sin conexión: esa página no se pudo traer.',
+    tryAgain: 'Probar otra vez',
   },
   verdicts: {
     holds: 'Aguanta',

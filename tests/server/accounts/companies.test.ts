@@ -1,3 +1,4 @@
+import { auditPageSchema } from '#shared/contracts/people.ts'
 import { randomUUID } from 'node:crypto'
 import { afterEach, beforeEach, describe, expect, it } from 'vitest'
 import { companySchema, sessionSchema, visitSchema } from '#shared/contracts/accounts.ts'
@@ -173,6 +174,24 @@ describe('a visit', () => {
       language: 'es',
     })
     expect((await visitAs(person.cookie)).session?.account.name).toBe('Alex Moor')
+  })
+
+  it('is noted where the old name is known, with the address that stays', async () => {
+    const company = makeCompany(server)
+    const person = makePerson(server, company, ['blaster'], { name: 'Sam Sand' })
+    const admin = makePerson(server, company)
+    for (const name of ['Olga Owner', 'Olga Owner']) {
+      await person.ask('PUT', '/api/v1/account', { name, language: 'en' })
+    }
+    const { items } = auditPageSchema.parse(await (await admin.ask('GET', '/api/v1/audit')).json())
+    expect(items).toMatchObject([
+      {
+        action: 'account.renamed',
+        actorName: 'Sam Sand',
+        actorEmail: person.email,
+        changes: { name: { from: 'Sam Sand', to: 'Olga Owner' } },
+      },
+    ])
   })
 
   it('offers neither demo nor mail page in production, off the own machine, or with a mail server', async () => {

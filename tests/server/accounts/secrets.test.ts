@@ -4,6 +4,7 @@ import type { AddressInfo } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { Writable } from 'node:stream'
+import { eq } from 'drizzle-orm'
 import { pino } from 'pino'
 import { afterEach, beforeEach, describe, expect, it } from 'vitest'
 import { sessionSchema, visitSchema } from '#shared/contracts/accounts.ts'
@@ -12,7 +13,8 @@ import { readConfig } from '../../../server/config.ts'
 import { createContext } from '../../../server/context.ts'
 import { prepareDemo } from '../../../server/db/seed.ts'
 import { openDatabase } from '../../../server/db/client.ts'
-import { passwordResets, sessions, signUps } from '../../../server/db/schema/index.ts'
+import { emails, passwordResets, sessions, signUps } from '../../../server/db/schema/index.ts'
+import { queueMail } from '../../../server/email/queueMail.ts'
 import { createLogger } from '../../../server/middleware/requestLog.ts'
 import { deleteExpired } from '../../../server/services/expiry.ts'
 import {
@@ -178,6 +180,35 @@ describe('clearing away', () => {
     now = new Date(now.getTime() + 14 * 24 * 3600_000)
     deleteExpired(server.context)
     expect(count()).toEqual([0, 0, 0])
+  })
+
+  it('takes mails 90 days after they were written, but none that waits', async () => {
+    let now = new Date()
+    const server = await startServer({}, () => now)
+    opened.push(server)
+    const day = 24 * 3600_000
+    const write = (to: string, state: 'waiting' | 'sent' | 'given-up') =>
+      server.database.transact((writer) => {
+        queueMail(writer, server.context, { to, subject: 'x', text: '', html: '' })
+        writer.update(emails).set({ state }).where(eq(emails.to, to)).run()
+      })
+    write('old-sent', 'sent')
+    write('old-lost', 'given-up')
+    write('old-waiting', 'waiting')
+    now = new Date(now.getTime() + day)
+    write('newer', 'sent')
+    const left = () =>
+      server.database.queries
+        .select()
+        .from(emails)
+        .all()
+        .map(({ to }) => to)
+    now = new Date(now.getTime() + 89 * day)
+    deleteExpired(server.context)
+    expect(left()).toEqual(['old-sent', 'old-lost', 'old-waiting', 'newer'])
+    now = new Date(now.getTime() + 1)
+    deleteExpired(server.context)
+    expect(left()).toEqual(['old-waiting', 'newer'])
   })
 })
 

@@ -134,6 +134,16 @@ describe('the cookie of a session', () => {
     expect(response.headers.getSetCookie()[0]).toContain('; Secure')
   })
 
+  it('goes over TLS only in production, whatever is said of the address', async () => {
+    await server.stop()
+    server = await startServer({ isProduction: true, publicUrl: 'http://127.0.0.1' })
+    await makeAccount(server)
+    const signedIn = await postSignIn(server, email)
+    expect(signedIn.headers.getSetCookie()[0]).toContain('; Secure')
+    const signedOut = await askWith(server.address, cookieOf(signedIn))('DELETE', '/api/v1/session')
+    expect(signedOut.headers.getSetCookie()[0]).toContain('; Secure')
+  })
+
   it('is another one after signing in, and the one before is worth nothing', async () => {
     await makeAccount(server)
     const first = await askSignedIn(server, email)
@@ -263,6 +273,42 @@ describe('whoever guesses', () => {
     release()
     await Promise.all(tries)
     expect(answers.slice(5).map(({ status }) => status)).toEqual([401, 401, 401])
+  })
+
+  it('gains nothing by sending all guesses before the first is answered', async () => {
+    const { passwords } = server.context
+    let release = () => {}
+    const gate = new Promise<void>((resolve) => (release = resolve))
+    let verified = 0
+    server.context.passwords = {
+      ...passwords,
+      verify: async () => {
+        verified += 1
+        await gate
+        return false
+      },
+    }
+    const waits: number[] = []
+    slowdownOf(server.context).wait = async (milliseconds) => {
+      waits.push(milliseconds)
+      await gate
+    }
+    const answers: number[] = []
+    const send = async (address: string) => answers.push((await postSignIn(server, address)).status)
+    const tries = Array.from({ length: 20 }, () => send(email))
+    await vi.waitFor(() => expect(answers).toHaveLength(14))
+    expect(answers.every((status) => status === 429)).toBe(true)
+    expect(waits).toEqual([500, 1000, 2000])
+    expect(verified).toBe(3)
+
+    // Nor by guessing at one account each: ten from one address are verified, twenty wait.
+    tries.push(...Array.from({ length: 40 }, (_, count) => send(`crew${count}@ridge.test`)))
+    await vi.waitFor(() => expect(answers).toHaveLength(14 + 19))
+    expect(verified).toBe(3 + 4)
+    expect(waits).toHaveLength(3 + 17)
+    release()
+    await Promise.all(tries)
+    expect(answers.filter((status) => status === 401)).toHaveLength(6 + 21)
   })
 
   it('by guessing at ever new accounts fills no memory', () => {

@@ -4,6 +4,15 @@ import type { ImportAnswer } from '#shared/contracts/imports.ts'
 import { recordLimits } from '#shared/contracts/limits.ts'
 import type { Fleet } from '#shared/contracts/rigs.ts'
 import { auditEntries } from '../../../server/db/schema/index.ts'
+import {
+  choiceCell,
+  curveCell,
+  dateCell,
+  numberCell,
+  quantityCell,
+  textCell,
+  yesNoCell,
+} from '../../../server/tables/cells.ts'
 import { makeCompressorBody, makeSiteBody } from '../../support/fleet.ts'
 import { makeCompany, makePerson } from '../../support/people.ts'
 import type { TestPerson } from '../../support/people.ts'
@@ -203,6 +212,8 @@ describe('a file of compressors', () => {
       'too-many',
     ],
     ['a thousand columns', `name${',x'.repeat(1000)}\n1\n`, 'too-many'],
+    ['a cell as long as a file', `name,free_air_cfm,set_pressure_psi\n${'a'.repeat(2001)},1,1\n`, 'too-long'],
+    ['such a heading', `name${'!'.repeat(2000)},free_air_cfm,set_pressure_psi\na,375,100\n`, 'too-long'],
   ])('is refused with %s', async (_what, csv, code) => {
     const answer = await send('compressors', csv, false)
     expect(answer.errors.map((error) => error.code)).toEqual([code])
@@ -218,6 +229,32 @@ describe('a file of compressors', () => {
     const over = await send('compressors', `${heading}one more,375,100\n`, false)
     expect(over.errors.map(({ code }) => code)).toEqual(['too-many'])
     expect((await readFleet()).compressors).toHaveLength(recordLimits.records)
+  })
+
+  it('repeats no more of a heading than it takes to know it', async () => {
+    const heading = `Name${'!'.repeat(1000)}`
+    const answer = await send('compressors', `${heading},free_air_cfm,set_pressure_psi\n,375,100\n`, true)
+    expect(errorsOf(answer)).toEqual([`2: required ${heading.slice(0, 60)}`])
+    expect(JSON.stringify(answer).length).toBeLessThan(500)
+  })
+
+  it('holds nobody up, whatever stands in its cells', () => {
+    const cells = [numberCell, textCell, dateCell, yesNoCell, curveCell, choiceCell(['a'])]
+    const bore = quantityCell('bore', { min: 1, max: 60 })
+    for (const filling of [' ', '1', '1,', '1 ', '|', '@', "'", '_', '%', 'No.', '½']) {
+      const text = `1${filling.repeat(40_000)}x`
+      const start = performance.now()
+      for (const cell of cells) cell.read(text, null)
+      bore.read(text, 'in')
+      expect(performance.now() - start, `40,000 times ${filling}`).toBeLessThan(1000)
+    }
+  })
+
+  it('may say a percent with a space before its sign', async () => {
+    const csv = 'name,free_air_cfm,set_pressure_psi,condition\nOld,375,100,88 %\nNew,375,100,97%\n'
+    expect((await send('compressors', csv, false)).written).toBe(2)
+    const { compressors } = await readFleet()
+    expect(compressors.map(({ conditionFactor }) => conditionFactor)).toEqual([0.97, 0.88])
   })
 
   it('is a text of at most a million characters', async () => {

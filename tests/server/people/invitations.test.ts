@@ -214,6 +214,19 @@ describe('withdrawing an invitation', () => {
     expect((await readPeople()).invitations).toEqual([])
     expect(await readActions()).toEqual(['invitation.withdrawn', 'invitation.sent'])
   })
+
+  it.each([[{ state: 'deactivated' }], [{ roles: ['blaster'] }]])(
+    'comes by itself once whoever sent it may invite no more: %j',
+    async (change) => {
+      const other = makePerson(server, company, ['admin'])
+      await invited(await invite(makeInput(), other))
+      await invited(await invite(makeInput({ email: 'another@example.test' })))
+      const answer = await admin.ask('PUT', `/api/v1/people/${other.membershipId}`, { version: 1, ...change })
+      expect(answer.status).toBe(200)
+      expect(await refused(await view(readToken('new@example.test')))).toBe('410 link-not-good')
+      expect((await view(readToken('another@example.test'))).status).toBe(200)
+    },
+  )
 })
 
 describe('the link of an invitation', () => {
@@ -373,5 +386,30 @@ describe('accepting an invitation', () => {
     expect(sessionSchema.parse(await response.json()).roles).toEqual(['blaster'])
     const used = server.database.queries.select().from(invitations).all()
     expect(used[0]?.acceptedAt).not.toBeNull()
+  })
+
+  it('does not undo that somebody was let go after it was sent', async () => {
+    const person = makePerson(server, company, ['blaster'])
+    const path = `/api/v1/people/${person.membershipId}`
+    await admin.ask('PUT', path, { version: 1, state: 'deactivated' })
+    await invited(await invite(makeInput({ email: person.email, roles: ['admin'] })))
+    const elsewhere = makeCompany(server, { name: 'Other Company' })
+    const otherAdmin = makePerson(server, elsewhere, ['admin'])
+    const other = await invited(await invite(makeInput({ email: person.email }), otherAdmin))
+    await admin.ask('PUT', path, { version: 2, state: 'active' })
+    expect((await admin.ask('PUT', path, { version: 3, state: 'deactivated' })).status).toBe(200)
+    const ask = askWith(server.address, makeSessionCookie(server, person.accountId, null))
+    const [ours, theirs] = server.database.queries
+      .select()
+      .from(emails)
+      .where(eq(emails.to, person.email))
+      .all()
+      .map(({ text }) => /\/invitation#([\w-]+)/.exec(text)?.[1])
+    expect(await refused(await accept({ token: ours }, ask))).toBe('410 link-not-good')
+    expect((await readPeople()).invitations).toEqual([])
+    expect((await readActions())[0]).toBe('invitation.withdrawn')
+    // What another company sent is none of ours.
+    const joined = sessionSchema.parse(await (await accept({ token: theirs }, ask)).json())
+    expect(joined).toMatchObject({ company: { id: elsewhere.id }, roles: other.roles })
   })
 })

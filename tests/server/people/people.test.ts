@@ -6,6 +6,8 @@ import { auditPageSchema, peopleSchema, personSchema } from '#shared/contracts/p
 import type { Person } from '#shared/contracts/people.ts'
 import { roles as everyRole } from '#shared/contracts/permissions.ts'
 import { memberships, sessions } from '../../../server/db/schema/index.ts'
+import { endSessionsOfAccount } from '../../../server/services/sessions.ts'
+import { makeSiteBody } from '../../support/fleet.ts'
 import { makeCompany, makePerson, makeSessionCookie, askWith } from '../../support/people.ts'
 import type { TestCompany, TestPerson } from '../../support/people.ts'
 import { readProblem } from '../../support/requests.ts'
@@ -250,15 +252,16 @@ describe('the last one', () => {
   })
 })
 
-describe('an admin who is let go while their request is on its way', () => {
-  it('gives nobody anything any more', async () => {
-    const second = makePerson(server, company, ['admin'])
-    const friend = makePerson(server, company, ['blaster'])
-    const body = JSON.stringify({ version: 1, roles: ['admin'] })
-    const asking = request(`${server.address}/api/v1/people/${friend.membershipId}`, {
-      method: 'PUT',
-      headers: { cookie: second.cookie, 'content-type': 'application/json', 'content-length': body.length },
-    })
+describe('while a request is on its way', () => {
+  /** Sends the head and a little of the body, which is enough to be let in, and the rest after something has happened. */
+  async function askSlowly(
+    { cookie }: TestPerson,
+    [method, path, record]: [method: string, path: string, record: object],
+    happens: () => unknown,
+  ): Promise<number | undefined> {
+    const body = JSON.stringify(record)
+    const headers = { cookie, 'content-type': 'application/json', 'content-length': body.length }
+    const asking = request(server.address + path, { method, headers })
     const status = new Promise<number | undefined>((resolve, reject) => {
       asking.on('response', (response) => {
         response.resume()
@@ -266,13 +269,32 @@ describe('an admin who is let go while their request is on its way', () => {
       })
       asking.on('error', reject)
     })
-    // Let in with the head; the body is still to come.
     asking.write(body.slice(0, 5))
     await new Promise((resolve) => setTimeout(resolve, 100))
-    await changed(await change(admin, second, { version: 1, state: 'deactivated' }))
+    await happens()
     asking.end(body.slice(5))
-    expect(await status).toBe(403)
+    return status
+  }
+
+  it('an admin who is let go gives nobody anything any more', async () => {
+    const second = makePerson(server, company, ['admin'])
+    const friend = makePerson(server, company, ['blaster'])
+    const status = await askSlowly(
+      second,
+      ['PUT', `/api/v1/people/${friend.membershipId}`, { version: 1, roles: ['admin'] }],
+      async () => changed(await change(admin, second, { version: 1, state: 'deactivated' })),
+    )
+    expect(status).toBe(403)
     const { people } = await list(admin)
     expect(people.find(({ id }) => id === friend.membershipId)?.roles).toEqual(['blaster'])
+  })
+
+  it('whose sessions are ended, as by a new password, writes nothing any more', async () => {
+    const site = makeSiteBody()
+    const post: [string, string, object] = ['POST', '/api/v1/sites', site]
+    const end = () => endSessionsOfAccount(server.database.queries, admin.accountId)
+    expect(await askSlowly(admin, post, end)).toBe(401)
+    const again = askWith(server.address, makeSessionCookie(server, admin.accountId, company.id))
+    expect((await again('GET', `/api/v1/sites/${site.id}`)).status).toBe(404)
   })
 })
