@@ -30,9 +30,12 @@ function start(): void {
   server.listen(config.port, config.host, () => {
     const { port } = server.address() as AddressInfo
     const host = config.host.includes(':') ? `[${config.host}]` : config.host
+    const address = `http://${host}:${port}`
+    // With PORT=0 the port is known only now.
+    if (!config.publicUrl) context.publicUrl = address
     const upkeep = startUpkeep(context)
     const mailer = startMailer(context)
-    console.log(`Sixteenth is at http://${host}:${port}`)
+    console.log(`Sixteenth is at ${address}`)
 
     async function shutDown(): Promise<void> {
       upkeep.stop()

@@ -101,7 +101,7 @@ test('a metric 1,250 is questioned and one tap settles it', async ({ check, page
   await check.open()
   await check.type('Altitude', '1,250')
   const altitude = check.field('Altitude')
-  expect(await sentenceOf(altitude)).toContain('two ways')
+  await expect.poll(() => sentenceOf(altitude)).toContain('two ways')
   const readings = page.locator('.readings button')
   await expect(readings).toHaveText(['1250 m', '1.25 m'])
   await readings.first().click()

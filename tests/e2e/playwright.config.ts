@@ -31,7 +31,7 @@ export default defineConfig({
     {
       name: 'desk',
       use: { viewport: { width: 1440, height: 900 } },
-      testIgnore: /(links|themes|width)\.spec\.ts/,
+      testIgnore: /(links|width)\.spec\.ts/,
     },
   ],
   webServer: {

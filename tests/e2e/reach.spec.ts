@@ -1,29 +1,12 @@
 import type { Page } from '@playwright/test'
-import { expectNoBarriers } from './support/axe.ts'
 import { expect, test } from './support/test.ts'
-
-test('axe finds nothing serious in the light theme', async ({ check, page }) => {
-  test.slow()
-  await expectNoBarriers(check, page, 'light')
-})
+import { expectLargeTargets } from './support/touch.ts'
 
 test('everything that is touched is 48 px high', async ({ check, page }) => {
   await check.open()
   await check.waitForPanels()
   await check.openEverything()
-  const small = await page.evaluate(() => {
-    // A field is touched anywhere on its card, a hidden box by its label.
-    const areaOf = (element: Element) => element.closest('.quantity, label, .choice') ?? element
-    return [...document.querySelectorAll('button, a, summary, input, select, [role="slider"]')]
-      .filter((element) => element.checkVisibility() && !element.matches('.skip'))
-      .map((element) => ({ element, height: areaOf(element).getBoundingClientRect().height }))
-      .filter(({ height, element }) => {
-        const isCell = element.closest('[data-testid="air-use"] td') && innerWidth >= 700
-        return height < (isCell ? 32 : 48)
-      })
-      .map(({ element, height }) => `${height}: ${element.outerHTML.slice(0, 120)}`)
-  })
-  expect(small).toEqual([])
+  await expectLargeTargets(page, 'the check with all open')
 })
 
 test('the keyboard alone changes the check, and always shows where it is', async ({ check, page }) => {

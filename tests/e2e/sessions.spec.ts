@@ -93,34 +93,6 @@ test('one tap enters the demo, signing out leaves it, and its cookie is dead', a
   expect((await request.get('/api/v1/fleet', { headers: { cookie } })).status()).toBe(401)
 })
 
-test('signing in leads to no other site, whatever the address asks for', async ({
-  page,
-  context,
-  desk,
-  baseURL,
-}) => {
-  const asked = [
-    'https://elsewhere.test/',
-    '//elsewhere.test/rigs',
-    '/\\elsewhere.test',
-    'javascript:alert(1)',
-  ]
-  await page.goto(`/sign-in?next=${encodeURIComponent(asked[0]!)}`)
-  await page.getByRole('button', { name: /^Ida Marsh/ }).click()
-  await expect(page.getByTestId('verdict')).toBeVisible()
-  await expect(page).toHaveURL(`${baseURL}/`)
-
-  await context.clearCookies()
-  await bringIn(context, desk.makePerson(desk.makeCompany()), baseURL!)
-  for (const next of asked.slice(1)) {
-    await page.goto(`/sign-in?next=${encodeURIComponent(next)}`)
-    await expect(page.getByTestId('verdict')).toBeVisible()
-    await expect(page).toHaveURL(`${baseURL}/`)
-  }
-  await page.goto('/sign-in?next=%2Frigs')
-  await expect(page).toHaveURL(`${baseURL}/rigs`)
-})
-
 test('the keyboard alone signs in and opens a rig', async ({ page, desk, rigScreen }) => {
   const owner = await desk.makePersonWithPassword(desk.makeCompany())
   await makeRig(owner, 'Trailer nine')

@@ -82,7 +82,16 @@ const refusals = namesOf<RefusalSentence>({
 const expansions: Record<string, readonly string[]> = {
   "accounts.audit.actions.${entry.action.replace('.', '_')}": actionNames,
   "accounts.audit.actions.${value.replace('.', '_')}": actionNames,
-  'accounts.audit.fields.${known}': ['name', 'roles', 'state', 'currency', 'language', 'timeZone', 'email'],
+  'accounts.audit.fields.${known}': [
+    'name',
+    'roles',
+    'state',
+    'currency',
+    'language',
+    'timeZone',
+    'email',
+    'written',
+  ],
   'accounts.people.last.${role}': ['owner', 'admin'],
   'accounts.people.lastStays.${role}': ['owner', 'admin'],
   'accounts.people.states.${state}': personStates,
@@ -90,6 +99,7 @@ const expansions: Record<string, readonly string[]> = {
   'accounts.problems.${fieldSentence(error, blanks.value.has(pointer))}': namesOf<FieldSentence>({
     required: true,
     'too-long': true,
+    'password-too-long': true,
     'too-short': true,
     'too-common': true,
     'too-few': true,

@@ -14,7 +14,7 @@ export const goodPassword = 'seven wet trailers'
 /** Where people and sessions are made straight in the data of a running server, for stories that begin later. */
 export interface CrewDesk {
   makeCompany(name?: string): TestCompany
-  makePerson(company: TestCompany, roles?: readonly Role[], name?: string): TestPerson
+  makePerson(company: TestCompany, roles?: readonly Role[], name?: string, email?: string): TestPerson
   /** who can sign in, by `goodPassword` */
   makePersonWithPassword(company: TestCompany, roles?: readonly Role[], name?: string): Promise<TestPerson>
   close(): Promise<void>
@@ -28,7 +28,8 @@ export function openCrewDesk(dataDir: string, address: string): CrewDesk {
   let hash: Promise<string> | undefined
   return {
     makeCompany: (name = 'Ridge Line Blasting') => makeCompany(data, { name }),
-    makePerson: (company, roles, name) => makePerson(data, company, roles, name ? { name } : {}),
+    makePerson: (company, roles, name, email) =>
+      makePerson(data, company, roles, { ...(name && { name }), ...(email && { email }) }),
     async makePersonWithPassword(company, roles, name) {
       const passwordHash = await (hash ??= context.passwords.hash(goodPassword))
       return makePerson(data, company, roles, { passwordHash, ...(name && { name }) })

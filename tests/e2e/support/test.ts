@@ -37,12 +37,12 @@ export async function takeRefusals(complaints: string[], ...statuses: number[]) 
   complaints.splice(0, complaints.length, ...others)
 }
 
-interface WorkerFixtures {
+export interface WorkerFixtures {
   /** the data of the server that all tests share */
   desk: CrewDesk
 }
 
-interface Fixtures {
+export interface Fixtures {
   /** errors, warnings, refused content and requests elsewhere, of every page; none are allowed */
   complaints: string[]
   check: CheckScreen

@@ -34,16 +34,23 @@ describe('what a form says beside its fields', () => {
   })
 
   test('a blank field lacks something; it is not too short or malformed', () => {
-    expect(fieldSentence({ code: 'too-short' }, true)).toBe('required')
-    expect(fieldSentence({ code: 'not-an-email' }, true)).toBe('required')
-    expect(fieldSentence({ code: 'too-short' }, false)).toBe('too-short')
-    expect(fieldSentence({ code: 'wrong-password' }, true)).toBe('wrong-password')
+    expect(fieldSentence(error('/password', 'too-short'), true)).toBe('required')
+    expect(fieldSentence(error('/email', 'not-an-email'), true)).toBe('required')
+    expect(fieldSentence(error('/password', 'too-short'), false)).toBe('too-short')
+    expect(fieldSentence(error('/currentPassword', 'wrong-password'), true)).toBe('wrong-password')
+  })
+
+  test('a company’s long name is not told what a password may have', () => {
+    expect(fieldSentence(error('/company/name', 'too-long'), false)).toBe('too-long')
+    expect(fieldSentence(error('/newPassword', 'too-long'), false)).toBe('password-too-long')
+    expect(fieldSentence(error('/password', 'too-long'), false)).toBe('password-too-long')
   })
 
   test('each code of a field and of a whole has a sentence in both languages', () => {
     for (const { accounts } of [en, es]) {
       for (const code of fieldErrorCodes)
-        expect(accounts.problems[fieldSentence({ code }, false)]).toBeTruthy()
+        for (const path of ['/name', '/password'])
+          expect(accounts.problems[fieldSentence(error(path, code), false)]).toBeTruthy()
       for (const code of [...problemCodes, 'offline'] as const)
         expect(accounts.refusals[refusalSentence(code)]).toBeTruthy()
     }

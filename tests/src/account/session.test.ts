@@ -108,6 +108,37 @@ describe('the session of this device', () => {
     expect(store.cutOff).toBeNull()
   })
 
+  test('another window that goes to another company takes this one along', async () => {
+    // as browsers do: only a value that changes is told to the other windows
+    const told: string[] = []
+    const kept = new Map<string, string>()
+    vi.stubGlobal('localStorage', {
+      getItem: (key: string) => kept.get(key) ?? null,
+      setItem(key: string, value: string) {
+        if (kept.get(key) !== value) told.push(key)
+        kept.set(key, value)
+      },
+      removeItem: (key: string) => kept.delete(key) && told.push(key),
+    })
+    const elsewhere = useSessionStore()
+    elsewhere.set(makeSession())
+    told.length = 0
+    elsewhere.set(makeSession())
+    expect(told).toEqual([])
+    const other = makeSession()
+    const company = { ...other.company!, id: '9d2a4f10-0000-4000-8000-00000000000b', name: 'Second' }
+    elsewhere.set({ ...other, company })
+    expect(told).not.toEqual([])
+
+    setActivePinia(createPinia())
+    const here = useSessionStore()
+    here.set(makeSession())
+    // the stores of the other tests are windows too
+    answers = Array.from({ length: 40 }, () => () => json(makeVisit({ ...other, company })))
+    dispatchEvent(new StorageEvent('storage', { key: told[0]! }))
+    await vi.waitFor(() => expect(here.session?.company?.name).toBe('Second'))
+  })
+
   test('signing out holds also where the session has ended already', async () => {
     const store = useSessionStore()
     store.set(makeSession())

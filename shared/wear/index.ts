@@ -1,0 +1,7 @@
+export { applicationDrift, defaultBitFeelMm, defaultSlip, forecastWear, wearPosterior } from './forecast.ts'
+export type { WearForecast, WearHistory, WearPosterior, WearQuestion, WearState } from './forecast.ts'
+export type { BitCheck, BoreCheck, GaugeCheck } from './checks.ts'
+export type { RatePrior } from './contradiction.ts'
+export type { Quantiles } from './drift.ts'
+export { equivalentHours, findLife, ratePriorOf, severityOf } from './severity.ts'
+export type { BlastMode, LifeFound, LinerRatePrior, WearMedia } from './severity.ts'
