@@ -4,6 +4,7 @@ import PressureCheckView from '../views/check/PressureCheckView.vue'
 import { accountPages } from './accountPages.ts'
 import { fleetPages } from './fleetPages.ts'
 import { guardPages } from './guards.ts'
+import { mindUnreachedPages } from './unreachedPages.ts'
 
 const SettingsView = () => import('../views/settings/SettingsView.vue')
 const SourcesView = () => import('../views/sources/SourcesView.vue')
@@ -36,5 +37,6 @@ export function createPages(history: RouterHistory, prepareRooms: () => Promise<
     scrollBehavior: (to, from, saved) => saved ?? (to.path === from.path ? undefined : { top: 0 }),
   })
   guardPages(router, prepareRooms)
+  mindUnreachedPages(router)
   return router
 }

@@ -17,10 +17,11 @@ function readHint(): boolean {
   }
 }
 
-function writeHint(isSignedIn: boolean) {
+/** Other windows hear of it where it is written anew: they would go on in another company than the server does. */
+function writeHint(isSignedIn: boolean, isAnew: boolean) {
   try {
+    if (!isSignedIn || isAnew) localStorage.removeItem(hintKey)
     if (isSignedIn) localStorage.setItem(hintKey, '1')
-    else localStorage.removeItem(hintKey)
   } catch {
     // A browser that keeps nothing draws its navigation a moment later.
   }
@@ -44,12 +45,13 @@ export const useSessionStore = defineStore('session', () => {
 
   function set(next: Session | null) {
     turn++
+    const before = scope.value
     session.value = next
     isKnown.value = true
     cutOff.value = null
     scope.value = next ? `${next.account.id} ${next.company?.id ?? ''}` : ''
     hint.value = next !== null
-    writeHint(hint.value)
+    writeHint(hint.value, before !== '' && before !== scope.value)
   }
 
   whenSignedOut(() => {
@@ -78,11 +80,17 @@ export const useSessionStore = defineStore('session', () => {
     return (loading ??= ask())
   }
 
-  /** Whoever signs in or out in another window of this browser does so here too. */
-  if (!import.meta.env.SSR)
+  /** Whoever signs in or out, or goes to another company, in another window of this browser does so here too. */
+  if (!import.meta.env.SSR) {
+    const askAnew = () => void load(true).catch(() => {})
     addEventListener('storage', ({ key }) => {
-      if (key === hintKey) void load(true).catch(() => {})
+      if (key === hintKey) askAnew()
     })
+    // a page that was put away heard nothing
+    addEventListener('pageshow', ({ persisted }) => {
+      if (persisted) askAnew()
+    })
+  }
 
   function can(permission: Permission): boolean {
     return session.value !== null && may(session.value.roles, permission)

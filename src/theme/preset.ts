@@ -32,7 +32,12 @@ export const preset = definePreset(
         },
       },
       button: {
-        root: { borderRadius: 'var(--radius-small)', paddingX: '14px', paddingY: '12px' },
+        root: {
+          borderRadius: 'var(--radius-small)',
+          paddingX: '14px',
+          paddingY: '12px',
+          label: { fontWeight: '600' },
+        },
         colorScheme: {
           light: {
             root: {

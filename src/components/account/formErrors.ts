@@ -45,11 +45,17 @@ const fieldSentences = [
   'name-in-use',
   'wrong-password',
 ] as const satisfies readonly FieldError['code'][]
-export type FieldSentence = (typeof fieldSentences)[number] | 'invalid'
+export type FieldSentence = (typeof fieldSentences)[number] | 'password-too-long' | 'invalid'
+
+const isOfPassword = (path: string) => /password$/i.test(path)
 
 /** Which sentence says what is wrong with a field: an empty one lacks a name before it has a wrong form. */
-export function fieldSentence({ code }: Pick<FieldError, 'code'>, isBlank: boolean): FieldSentence {
+export function fieldSentence(
+  { code, path }: Pick<FieldError, 'code' | 'path'>,
+  isBlank: boolean,
+): FieldSentence {
   if (isBlank && code !== 'wrong-password') return 'required'
+  if (code === 'too-long' && isOfPassword(path)) return 'password-too-long'
   return fieldSentences.find((known) => known === code) ?? 'invalid'
 }
 

@@ -37,12 +37,15 @@ export function useEditorErrors(
         return path === '' ? sentenceOf(error) : `${fieldLabel(path)}: ${sentenceOf(error)}`
       }),
   )
-  /** Why the whole was refused, where no field says it. */
+  /** whether a field still says what the server found */
+  const hasShown = computed(() => errors.value.some(({ path }) => !forgotten.has(path)))
+  /** Why the whole was refused, and where no field is in sight that there is one. */
   const summary = computed(() => {
     if (!refusal.value || refusal.value.code === 'version-conflict') return ''
     const { code } = refusal.value
     if (code === 'offline') return t('kit.notSaved')
-    if (code === 'invalid-fields' && errors.value.length > 0 && others.value.length === 0) return ''
+    if (code === 'invalid-fields' && errors.value.length > 0 && others.value.length === 0)
+      return hasShown.value ? t('kit.unfinished') : ''
     return t(`accounts.refusals.${refusalSentence(refusal.value.code)}`)
   })
 

@@ -1,3 +1,4 @@
+import { recordLimits } from '#shared/contracts/limits.ts'
 import type { FieldError, FieldErrorCode } from '#shared/contracts/problems.ts'
 import { useWords } from '../../composables/useWords.ts'
 
@@ -28,5 +29,6 @@ const keys: Partial<Record<FieldErrorCode, string>> = {
 /** What is wrong with a field, in the person's language. */
 export function useFieldErrorWords() {
   const { t } = useWords()
-  return ({ code }: Pick<FieldError, 'code'>) => t(keys[code] ?? 'kit.errors.other')
+  return ({ code }: Pick<FieldError, 'code'>) =>
+    t(keys[code] ?? 'kit.errors.other', { most: recordLimits.name })
 }

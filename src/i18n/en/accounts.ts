@@ -180,6 +180,7 @@ export const accounts = {
     noneFound: 'Nothing found. Take away a filter.',
     more: 'Show earlier ones',
     nothing: 'nothing',
+    deleted: 'deleted since',
     yes: 'yes',
     no: 'no',
     fields: {
@@ -190,6 +191,8 @@ export const accounts = {
       language: 'language',
       timeZone: 'time zone',
       email: 'e-mail',
+      written: 'lines',
+      localDate: 'day',
     },
     actions: {
       company_created: 'started the company',

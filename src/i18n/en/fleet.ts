@@ -30,6 +30,7 @@ export const kit = {
   restored: '“{name}” is back.',
   archive: 'Archive',
   unarchive: 'Bring back into use',
+  moreRigs: '{count} more rigs',
   usedBy: 'Usual for {rigs}',
   inUse: '“{name}” is the usual one of {rigs}. Give them another first.',
   changedMeanwhile: 'Somebody has just changed it. It is shown as it is now; try again.',

@@ -30,6 +30,7 @@ export const kit = {
   restored: '«{name}» está de vuelta.',
   archive: 'Archivar',
   unarchive: 'Volver a usarlo',
+  moreRigs: '{count} equipos más',
   usedBy: 'El usual de {rigs}',
   inUse: '«{name}» es el usual de {rigs}. Primero deles otro.',
   changedMeanwhile: 'Alguien lo acaba de cambiar. Se muestra como está ahora; intente otra vez.',
