@@ -15,6 +15,7 @@ const problemsByCode = {
   forbidden: { status: 403, title: 'Not allowed' },
   'cross-origin': { status: 403, title: 'From another site' },
   'link-not-good': { status: 410, title: 'Link no longer good' },
+  'other-company': { status: 409, title: 'Another company' },
   'version-conflict': { status: 409, title: 'Changed meanwhile' },
   'id-in-use': { status: 409, title: 'Id in use' },
   'in-use': { status: 409, title: 'In use' },

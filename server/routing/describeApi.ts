@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { isPermission } from '#shared/contracts/permissions.ts'
 import { problemSchema } from '#shared/contracts/problems.ts'
 import type { ProblemCode } from '#shared/contracts/problems.ts'
 import { statusOf } from '../problems.ts'
@@ -45,7 +46,7 @@ function refusalsOf(spec: RouteSpec): number[] {
   // Whatever stands in a query that a route does not know is refused.
   const codes: ProblemCode[] = ['invalid-fields', ...(spec.problems ?? [])]
   if (spec.access !== 'anyone' && spec.access !== 'visitor') codes.push('not-signed-in')
-  if (!['anyone', 'visitor', 'signed-in'].includes(spec.access)) codes.push('forbidden')
+  if (isPermission(spec.access)) codes.push('forbidden', 'other-company')
   if (spec.method !== 'get') codes.push('cross-origin')
   if (spec.params) codes.push('not-found')
   if (spec.body) codes.push('bad-json', 'body-too-large', 'wrong-content-type')

@@ -1,7 +1,8 @@
 import { Router } from 'express'
-import type { RequestHandler } from 'express'
+import type { Request, RequestHandler } from 'express'
 import { z } from 'zod'
-import { may } from '#shared/contracts/permissions.ts'
+import { companyHeader } from '#shared/contracts/limits.ts'
+import { isPermission, may } from '#shared/contracts/permissions.ts'
 import type { Actor, SignedIn } from '../actor.ts'
 import type { AppContext } from '../context.ts'
 import { jsonBody } from '../middleware/jsonBody.ts'
@@ -31,6 +32,13 @@ export function admit(spec: RouteSpec, caller: SignedIn | Actor | null): void {
   if (!may(caller.roles, access)) {
     throw makeProblem('forbidden', 'Your roles in this company do not include this.')
   }
+}
+
+/** A page that another window has taken to another company says which one it shows. */
+function refuseOtherCompany(request: Request, caller: SignedIn | Actor | null): void {
+  const meant = request.get(companyHeader)
+  if (meant === undefined || caller === null || !isActor(caller) || meant === caller.companyId) return
+  throw makeProblem('other-company', 'Another company is open in this session now.')
 }
 
 function parseParams(spec: RouteSpec, params: unknown): unknown {
@@ -65,6 +73,7 @@ function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
   const guard: RequestHandler = (request, response, next) => {
     const caller = readsSession ? identify(context, request) : null
     admit(spec, caller)
+    if (isPermission(spec.access)) refuseOtherCompany(request, caller)
     response.locals['caller'] = caller
     next()
   }

@@ -45,6 +45,9 @@ export const minUnloadAboveSetKpa = 10
 /** A nozzle's length in the contract is the 64th of an inch it stands for; one function for screens and API. */
 export { snapBoreMm as snapTo64ths } from '../units/quantities.ts'
 
+/** The company that a page shows, said with what it asks: another window may have gone to another one. */
+export const companyHeader = 'sixteenth-company'
+
 /** What a saved record may contain. */
 export const recordLimits = {
   name: 60,

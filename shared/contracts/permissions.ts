@@ -15,6 +15,10 @@ export const permissions = {
 
 export type Permission = keyof typeof permissions
 
+export function isPermission(access: string): access is Permission {
+  return Object.hasOwn(permissions, access)
+}
+
 export function may(held: readonly Role[], permission: Permission): boolean {
   const allowed: readonly Role[] = permissions[permission]
   return held.some((role) => allowed.includes(role))

@@ -16,6 +16,7 @@ export const problemCodes = [
   'forbidden',
   'cross-origin',
   'link-not-good',
+  'other-company',
   'version-conflict',
   'id-in-use',
   'in-use',

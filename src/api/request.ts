@@ -1,3 +1,4 @@
+import { companyHeader } from '#shared/contracts/limits.ts'
 import type { Problem } from '#shared/contracts/problems.ts'
 
 /** What the server refused, as it said it; `offline` where nothing answered at all. */
@@ -11,6 +12,19 @@ export class ApiProblem extends Error {
   }
 }
 
+/** the company that the page shows */
+let company: string | null = null
+let onOtherCompany: () => void = () => {}
+
+export function askFor(companyId: string | null): void {
+  company = companyId
+}
+
+/** Another window may have taken the session to another company: whoever keeps it is told. */
+export function whenOtherCompany(listen: () => void): void {
+  onOtherCompany = listen
+}
+
 let onSignedOut: () => void = () => {}
 
 /** Somebody's session may end while their page is open: whoever keeps it is told. */
@@ -22,6 +36,7 @@ async function readProblem(response: Response): Promise<ApiProblem> {
   try {
     const problem = (await response.json()) as Problem
     if (problem.code === 'not-signed-in') onSignedOut()
+    if (problem.code === 'other-company') onOtherCompany()
     return new ApiProblem(problem.code, problem)
   } catch {
     return new ApiProblem('internal-error', null)
@@ -35,10 +50,11 @@ export async function askApi<Answer = void>(method: string, path: string, body?:
     response = await fetch(path, {
       method,
       credentials: 'same-origin',
-      ...(body !== undefined && {
-        headers: { 'content-type': 'application/json' },
-        body: JSON.stringify(body),
-      }),
+      headers: {
+        ...(company && { [companyHeader]: company }),
+        ...(body !== undefined && { 'content-type': 'application/json' }),
+      },
+      ...(body !== undefined && { body: JSON.stringify(body) }),
     })
   } catch {
     throw new ApiProblem('offline', null)

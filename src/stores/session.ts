@@ -4,7 +4,7 @@ import type { Session, Visit } from '#shared/contracts/accounts.ts'
 import { may } from '#shared/contracts/permissions.ts'
 import type { Permission } from '#shared/contracts/permissions.ts'
 import { fetchVisit, signOut as askToSignOut } from '../api/accounts.ts'
-import { ApiProblem, whenSignedOut } from '../api/request.ts'
+import { ApiProblem, askFor, whenOtherCompany, whenSignedOut } from '../api/request.ts'
 
 /** Says only that somebody was signed in on this device, so that the navigation is drawn as it will be. */
 const hintKey = 'sixteenth.signed-in'
@@ -49,6 +49,7 @@ export const useSessionStore = defineStore('session', () => {
     session.value = next
     isKnown.value = true
     cutOff.value = null
+    askFor(next?.company?.id ?? null)
     scope.value = next ? `${next.account.id} ${next.company?.id ?? ''}` : ''
     hint.value = next !== null
     writeHint(hint.value, before !== '' && before !== scope.value)
@@ -83,6 +84,7 @@ export const useSessionStore = defineStore('session', () => {
   /** Whoever signs in or out, or goes to another company, in another window of this browser does so here too. */
   if (!import.meta.env.SSR) {
     const askAnew = () => void load(true).catch(() => {})
+    whenOtherCompany(askAnew)
     addEventListener('storage', ({ key }) => {
       if (key === hintKey) askAnew()
     })

@@ -67,6 +67,7 @@ const refusals = namesOf<RefusalSentence>({
   'wrong-credentials': true,
   forbidden: true,
   'link-not-good': true,
+  'other-company': true,
   'version-conflict': true,
   'id-in-use': true,
   'too-many-records': true,

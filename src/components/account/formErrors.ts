@@ -67,6 +67,7 @@ const refusalSentences = [
   'wrong-credentials',
   'forbidden',
   'link-not-good',
+  'other-company',
   'version-conflict',
   'id-in-use',
   'too-many-records',

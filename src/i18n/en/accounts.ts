@@ -263,6 +263,8 @@ export const accounts = {
     'wrong-credentials': 'E-mail and password do not go together.',
     forbidden: 'Your roles do not allow this.',
     'link-not-good': 'This link no longer works.',
+    'other-company':
+      'Another window of this browser has gone to another company. Nothing was saved; this page follows it now.',
     'version-conflict':
       'Somebody else changed this meanwhile. Here is how it stands now; do it again if you still want it.',
     'id-in-use': 'This was sent already, differently. Open the page anew.',

@@ -263,6 +263,8 @@ export const accounts = {
     'wrong-credentials': 'El correo y la contraseña no corresponden.',
     forbidden: 'Sus funciones no llegan a esto.',
     'link-not-good': 'Este enlace ya no sirve.',
+    'other-company':
+      'Otra ventana de este navegador pasó a otra empresa. No se guardó nada; esta página pasa también.',
     'version-conflict':
       'Otra persona lo cambió entretanto. Así quedó; hágalo otra vez si todavía hace falta.',
     'id-in-use': 'Esto ya se había mandado, pero distinto. Abra la página de nuevo.',

@@ -116,6 +116,26 @@ describe('the active company', () => {
   })
 })
 
+describe('a page that shows another company than the session has', () => {
+  it('changes nothing there, and is told', async () => {
+    const person = makePerson(server, makeCompany(server))
+    const change = (companyId: string) =>
+      fetch(`${server.address}/api/v1/company`, {
+        method: 'PUT',
+        headers: {
+          cookie: person.cookie,
+          'content-type': 'application/json',
+          'sixteenth-company': companyId,
+        },
+        body: JSON.stringify({ ...input, version: 1 }),
+      })
+    const problem = await readProblem(await change(makeCompany(server).id))
+    expect([problem.status, problem.code]).toEqual([409, 'other-company'])
+    expect(server.database.queries.select().from(auditEntries).all()).toEqual([])
+    expect((await change(person.company.id)).status).toBe(200)
+  })
+})
+
 describe('changing the company', () => {
   it('is noted with what was and what became', async () => {
     const person = makePerson(server, makeCompany(server), ['owner'])
