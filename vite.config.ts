@@ -101,6 +101,38 @@ function prerender(): Plugin {
   }
 }
 
+interface ModuleGraph {
+  getModuleInfo(id: string): { isEntry: boolean; importers: readonly string[] } | null
+}
+
+const isFirst = new Map<string, boolean>()
+
+/** Whether the first script imports this, by however many steps but none of them lazy. */
+function isImportedFirst(id: string, graph: ModuleGraph): boolean {
+  const known = isFirst.get(id)
+  if (known !== undefined) return known
+  isFirst.set(id, false)
+  const info = graph.getModuleInfo(id)
+  const isIt = info !== null && (info.isEntry || info.importers.some((each) => isImportedFirst(each, graph)))
+  isFirst.set(id, isIt)
+  return isIt
+}
+
+const firstChunks = [
+  ['prime', /node_modules[\\/]@?prime/],
+  ['words', /[\\/](vue-i18n|@intlify|src[\\/]i18n)[\\/]/],
+  ['air', /[\\/]shared[\\/]/],
+] as const
+
+/**
+ * What the first page needs comes in a few files of ours: a phone asks for few things at a time, and is heard between
+ * one file and the next.
+ */
+function firstChunkName(id: string, graph: ModuleGraph): string | null {
+  if (!isImportedFirst(id, graph)) return null
+  return firstChunks.find(([, test]) => test.test(id))?.[0] ?? 'first'
+}
+
 export default defineConfig({
   plugins: [vue(), prerender(), precompress()],
   publicDir: 'src/public',
@@ -130,6 +162,7 @@ export default defineConfig({
               test: /node_modules[\\/](@vue|vue|vue-router|pinia|vue-i18n|@intlify)[\\/]/,
               priority: 2,
             },
+            { name: firstChunkName, debugName: 'first' },
             { name: 'chart', test: /node_modules[\\/](chart\.js|vue-chartjs|chartjs-|@kurkle)/, priority: 1 },
           ],
         },
