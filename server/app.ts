@@ -27,7 +27,11 @@ export function createApp(context: AppContext): Express {
   app.set('etag', false)
   app.use(requestLog(context.logger))
   app.use(securityHeaders(context.config, client.inlineScriptHashes))
-  app.use(compression())
+  const compress = compression()
+  app.use((request, response, next) => {
+    if (request.headers['accept-encoding'] === undefined) next()
+    else compress(request, response, next)
+  })
 
   app.use('/api', neverStore)
   app.use(mountRoutes(routes, context))
