@@ -44,9 +44,9 @@ function nameBy(records: { id: string; name: string }[]): (id: string | null) =>
 function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
   const { companyId, roles } = actor
   return database.transact((writer) => {
-    const compressors = listRecords(compressorKind, database, companyId)
-    const sites = listRecords(siteKind, database, companyId)
-    const rigs = listRecords(rigKind, database, companyId)
+    const compressors = listRecords(compressorKind, database, actor)
+    const sites = listRecords(siteKind, database, actor)
+    const rigs = listRecords(rigKind, database, actor)
     const names: Names = { compressor: nameBy(compressors), site: nameBy(sites), rig: nameBy(rigs) }
     const files: ExportFile[] = []
     const about: string[] = [introduction]

@@ -84,6 +84,8 @@ export const workLimits = {
   gaugeAccuracyKpa: { min: 0.1, max: 500 },
   bulkDensityKgM3: { min: 100, max: 8000 },
   mohsHardness: { min: 1, max: 10 },
+  /** shifts of one company, and as many of each other thing that is written down */
+  records: 20_000,
   photoBytes: 10_000_000,
   photoPixels: 40_000_000,
   /** of one company's photos */

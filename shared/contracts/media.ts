@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { ABRASIVES } from '../catalogue/media.ts'
 import { recordFields } from './compressors.ts'
 import { workLimits } from './limits.ts'
-import { idSchema, nameSchema, versionSchema, within } from './records.ts'
+import { idSchema, nameSchema, pageOf, versionSchema, within } from './records.ts'
 
 /** A blasting medium of the company's list, from a generic type. */
 const mediumFields = {
@@ -18,6 +18,7 @@ const mediumFields = {
 export const newMediumSchema = z.strictObject({ ...mediumFields, id: idSchema })
 export const mediumChangeSchema = z.strictObject({ ...mediumFields, version: versionSchema })
 export const mediumRecordSchema = z.strictObject({ ...mediumFields, ...recordFields })
+export const mediumPageSchema = pageOf(mediumRecordSchema)
 
 export type NewMedium = z.infer<typeof newMediumSchema>
 export type MediumChange = z.infer<typeof mediumChangeSchema>

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { recordFields } from './compressors.ts'
 import { checkLimits, maxOutlets, snapTo64ths, workLimits } from './limits.ts'
-import { idSchema, instantSchema, lineOfText, ruleBroken, versionSchema, within } from './records.ts'
+import { idSchema, instantSchema, lineOfText, pageOf, ruleBroken, versionSchema, within } from './records.ts'
 
 export const nozzleShapes = ['straight', 'venturi', 'double-venturi', 'fan', 'angle'] as const
 export const liners = [
@@ -17,7 +17,7 @@ const nozzleLength = () => within(checkLimits.boreMm).overwrite(snapTo64ths)
 
 /** A nozzle as a thing. What nobody knows of it is null: a tag that cannot be read, a new bore nobody remembers. */
 const nozzleFields = {
-  /** a number, notches or paint marks; one of a kind in a company while the nozzle lives */
+  /** a number, notches or paint marks; one of a kind among the company's nozzles that are not archived */
   tag: lineOfText(workLimits.tagLength).nullable(),
   numberSixteenths: z.number().int().min(1).max(37).nullable(),
   newBoreMm: nozzleLength().nullable(),
@@ -61,10 +61,13 @@ export const unknownNozzleSchema = z.strictObject({
 export const nozzleRecordSchema = z.strictObject({
   ...nozzleFields,
   ...recordFields,
+  /** the tag, or what stands in for one that cannot be read: “unknown 3” */
+  name: z.string(),
   photoId: z.string().nullable(),
   /** absent for who may not see prices */
   priceMinor: priceMinor.optional(),
 })
+export const nozzlePageSchema = pageOf(nozzleRecordSchema)
 
 /** What happens to a nozzle. The later event closes the earlier; nothing is refused for what another phone said. */
 export const nozzleEventKinds = ['mounted', 'taken-off', 'broken', 'retired', 'put-back'] as const
@@ -103,6 +106,7 @@ export const nozzleEventSchema = z.strictObject({ ...newNozzleEventSchema.shape,
 export type NozzleShape = (typeof nozzleShapes)[number]
 export type Liner = (typeof liners)[number]
 export type NozzleEventKind = (typeof nozzleEventKinds)[number]
+export type Breakage = (typeof breakages)[number]
 export type NewNozzle = z.infer<typeof newNozzleSchema>
 export type NozzleChange = z.infer<typeof nozzleChangeSchema>
 export type UnknownNozzle = z.infer<typeof unknownNozzleSchema>

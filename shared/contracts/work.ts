@@ -3,7 +3,7 @@ import { bitSetNameSchema } from './check.ts'
 import { checkLimits, maxOutlets, snapTo64ths, workLimits } from './limits.ts'
 import { mediumRecordSchema } from './media.ts'
 import { madeSchema, nozzleEventSchema, nozzleRecordSchema, receivedFields } from './nozzles.ts'
-import { idSchema, lineOfText, localDateSchema, ruleBroken, within } from './records.ts'
+import { idSchema, lineOfText, localDateSchema, pageOf, ruleBroken, within } from './records.ts'
 
 /** What crews write down: shifts, bore checks, gauges. A correction supersedes the earlier record, which stays. */
 
@@ -29,6 +29,7 @@ export const newShiftSchema = madeSchema.extend({
   supersedesId,
 })
 export const shiftSchema = z.strictObject({ ...newShiftSchema.shape, ...receivedFields })
+export const shiftPageSchema = pageOf(shiftSchema)
 
 export const boreCheckMethods = ['bits', 'taper-gauge', 'caliper', 'pin'] as const
 export const newBoreCheckSchema = madeSchema
@@ -49,9 +50,10 @@ export const newBoreCheckSchema = madeSchema
     photoId: idSchema.nullable(),
     supersedesId,
   })
-  .superRefine(({ method, passedMm, refusedMm, boreMm, accuracyMm }, context) => {
+  .superRefine(({ method, passedMm, refusedMm, boreMm, accuracyMm, isCracked }, context) => {
     if (method === 'bits') {
-      if (passedMm === null && refusedMm === null) {
+      // A crack is seen before any bit goes in, and none has to.
+      if (passedMm === null && refusedMm === null && !isCracked) {
         context.addIssue(
           ruleBroken('required', 'A bit that went through, or one that did not.', ['passedMm']),
         )
@@ -91,6 +93,8 @@ export const gaugeReadingSchema = z.strictObject({
 })
 export const setAsideSchema = z.strictObject({ isSetAside: z.boolean() })
 
+/** The address of an upload carries the id; its body is the picture. */
+export const photoQuerySchema = z.strictObject({ id: idSchema })
 export const photoSchema = z.strictObject({
   id: z.string(),
   widthPx: z.number(),

@@ -1,7 +1,8 @@
 import { foreignKey, index, integer, primaryKey, real, sqliteTable, text } from 'drizzle-orm/sqlite-core'
+import type { AbrasiveId } from '#shared/catalogue/media.ts'
 import type { BitSetName } from '#shared/contracts/check.ts'
 import type { BoreCheckMethod } from '#shared/contracts/work.ts'
-import type { Liner, NozzleEventKind, NozzleShape } from '#shared/contracts/nozzles.ts'
+import type { Breakage, Liner, NozzleEventKind, NozzleShape } from '#shared/contracts/nozzles.ts'
 import { instant, recordColumns } from '../columns.ts'
 import { accounts, companies } from './accounts.ts'
 import { compressors, rigs, sites } from './fleet.ts'
@@ -38,7 +39,7 @@ export const media = sqliteTable(
   {
     ...recordColumns(),
     name: text('name').notNull(),
-    abrasive: text('abrasive').notNull(),
+    abrasive: text('abrasive').$type<AbrasiveId>().notNull(),
     bulkDensityKgM3: real('bulk_density_kg_m3'),
     mohsHardness: real('mohs_hardness'),
     hasFreeSilica: integer('has_free_silica', { mode: 'boolean' }).notNull(),
@@ -73,7 +74,7 @@ export const nozzleEvents = sqliteTable(
     kind: text('kind').$type<NozzleEventKind>().notNull(),
     rigId: text('rig_id'),
     outletIndex: integer('outlet_index'),
-    breakage: text('breakage'),
+    breakage: text('breakage').$type<Breakage>(),
     note: text('note'),
   },
   (table) => [
@@ -104,7 +105,7 @@ export const shifts = sqliteTable(
     primaryKey({ columns: [table.companyId, table.id] }),
     foreignKey({ columns: [table.companyId, table.rigId], foreignColumns: [rigs.companyId, rigs.id] }),
     foreignKey({ columns: [table.companyId, table.mediumId], foreignColumns: [media.companyId, media.id] }),
-    index('shifts_rig').on(table.companyId, table.rigId, table.localDate),
+    index('shifts_newest').on(table.companyId, table.localDate, table.receivedAt, table.id),
   ],
 )
 
