@@ -15,6 +15,7 @@ import { mailRoutes } from './mails.ts'
 import { mediaRoutes } from './media.ts'
 import { nozzleRoutes } from './nozzles.ts'
 import { peopleRoutes } from './people.ts'
+import { photoRoutes } from './photos.ts'
 import { rigRoutes } from './rigs.ts'
 import { siteRoutes } from './sites.ts'
 import { workRoutes } from './work.ts'
@@ -44,6 +45,7 @@ export const routes: readonly RouteSpec[] = [
   ...nozzleRoutes,
   ...mediaRoutes,
   ...workRoutes,
+  ...photoRoutes,
   ...exportRoutes,
   ...auditRoutes,
   ...invitationRoutes,

@@ -71,6 +71,7 @@ function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
     guard,
     // A body may take its time to arrive, and roles be taken away meanwhile.
     ...(spec.body ? [...jsonBody(spec.maxBodyBytes), guard] : []),
+    ...(spec.upload ? [spec.upload.read, guard] : []),
     answerCall(spec, context),
   ]
 }
