@@ -17,10 +17,19 @@ import {
   makeTodayTable,
 } from './exportTables.ts'
 import type { Names } from './exportTables.ts'
+import {
+  makeBoreCheckTable,
+  makeEventTable,
+  makeGaugeTable,
+  makeMediaTable,
+  makeNozzleTable,
+  makeShiftTable,
+} from './exportWorkTables.ts'
 import { listRecords } from './records.ts'
 import type { Context } from './records.ts'
 import { rigKind } from './rigs.ts'
 import { siteKind } from './sites.ts'
+import { readWork } from './work.ts'
 
 const introduction = [
   'The company’s data, as it was at one moment.',
@@ -30,7 +39,7 @@ const introduction = [
   'compressors.csv and rigs.csv can be imported again, and so can any file with their headings. There a cell may say its',
   'own unit (375 cfm, 100 psi, 1 1/4 in, No. 6), and a heading may end with another: free_air_cfm, set_pressure_psi,',
   'hose_length_ft, nozzle_number. A text that a spreadsheet would run as a formula begins with an apostrophe.',
-  'What is deleted is not in here.',
+  'What is deleted is not in here. Photos are not in here either.',
   '',
   '',
 ].join('\r\n')
@@ -47,7 +56,14 @@ function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
     const compressors = listRecords(compressorKind, database, actor)
     const sites = listRecords(siteKind, database, actor)
     const rigs = listRecords(rigKind, database, actor)
-    const names: Names = { compressor: nameBy(compressors), site: nameBy(sites), rig: nameBy(rigs) }
+    const { nozzles, media, events, shifts, boreChecks, gaugeReadings } = readWork({ database }, actor)
+    const names: Names = {
+      compressor: nameBy(compressors),
+      site: nameBy(sites),
+      rig: nameBy(rigs),
+      nozzle: nameBy(nozzles),
+      medium: nameBy(media),
+    }
     const files: ExportFile[] = []
     const about: string[] = [introduction]
     const add = <Row>(table: ExportTable<Row>) => {
@@ -61,6 +77,12 @@ function readFiles({ database, now }: Context, actor: Actor): ExportFile[] {
     add(makeRigTable(rigs, names))
     add(makeOutletTable(rigs))
     add(makeTodayTable(database, companyId, names))
+    add(makeNozzleTable(nozzles, names))
+    add(makeEventTable(events, names))
+    add(makeMediaTable(media))
+    add(makeShiftTable(shifts, names))
+    add(makeBoreCheckTable(boreChecks, names))
+    add(makeGaugeTable(gaugeReadings, names))
     if (may(roles, 'read-audit')) {
       files.push({ name: 'audit.csv', text: [...writeAuditCsv(database, actor, {})].join('') })
       about.push('audit.csv\r\n  Who did what, when (UTC); changes as JSON, from what to what.\r\n')

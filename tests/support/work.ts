@@ -122,7 +122,7 @@ export async function save<Answer = Record<string, unknown>>(
 }
 
 /** A compressor, a site, a rig, a medium and a nozzle of a company, by their ids. */
-export async function makeYard(owner: TestPerson) {
+export async function makeYard(owner: Pick<TestPerson, 'ask'>) {
   const bodies = {
     compressors: makeCompressorBody(),
     sites: makeSiteBody(),
