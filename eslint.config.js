@@ -9,7 +9,7 @@ const otherRooms = {
   client: { regex: '(^|/)src/', message: 'The client is not known here.' },
   contracts: {
     regex: '(^|/)contracts/',
-    message: 'Calculations know nothing of the API: shared/check and shared/form translate.',
+    message: 'Calculations know nothing of the API: shared/check, form and work translate.',
   },
   packages: {
     regex: '^(?!\\.{1,2}/|#shared/)',
@@ -96,7 +96,7 @@ export default typescript.config(
     rules: forbid(otherRooms.packagesButZod, otherRooms.server, otherRooms.client),
   },
   {
-    files: ['shared/{check,form}/**/*.ts'],
+    files: ['shared/{check,form,work}/**/*.ts'],
     rules: forbid(otherRooms.packages, otherRooms.server, otherRooms.client, otherRooms.checkSchemas),
   },
   { files: ['server/**/*.ts'], rules: forbid(otherRooms.client) },

@@ -1,5 +1,6 @@
 import { importAnswerSchema, importRequestSchema } from '#shared/contracts/imports.ts'
 import { defineRoute } from '../routing/route.ts'
+import { importHistory } from '../services/historyImport.ts'
 import { importCompressors, importRigs } from '../services/imports.ts'
 
 /** A text may take twice its bytes in JSON: quotation marks and line ends are written with a backslash. */
@@ -28,5 +29,17 @@ export const importRoutes = [
     maxBodyBytes,
     answer: importAnswerSchema,
     handle: ({ context, caller, body }) => importRigs(context, caller, body),
+  }),
+  defineRoute({
+    method: 'post',
+    path: '/api/v1/history/import',
+    access: 'write-fleet',
+    operationId: 'importHistory',
+    summary: 'Look at a CSV file of hours and checks, or save all of it; rigs, nozzles and media are named',
+    body: importRequestSchema,
+    maxBodyBytes,
+    answer: importAnswerSchema,
+    problems: ['too-many-records'],
+    handle: ({ context, caller, body }) => importHistory(context, caller, body),
   }),
 ]

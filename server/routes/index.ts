@@ -12,9 +12,13 @@ import { healthRoutes } from './health.ts'
 import { importRoutes } from './imports.ts'
 import { invitationRoutes } from './invitations.ts'
 import { mailRoutes } from './mails.ts'
+import { mediaRoutes } from './media.ts'
+import { nozzleRoutes } from './nozzles.ts'
 import { peopleRoutes } from './people.ts'
+import { photoRoutes } from './photos.ts'
 import { rigRoutes } from './rigs.ts'
 import { siteRoutes } from './sites.ts'
+import { workRoutes } from './work.ts'
 
 let description: object | undefined
 
@@ -38,6 +42,10 @@ export const routes: readonly RouteSpec[] = [
   ...compressorRoutes,
   ...siteRoutes,
   ...rigRoutes,
+  ...nozzleRoutes,
+  ...mediaRoutes,
+  ...workRoutes,
+  ...photoRoutes,
   ...exportRoutes,
   ...auditRoutes,
   ...invitationRoutes,

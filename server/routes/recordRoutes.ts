@@ -16,7 +16,7 @@ interface Options<Profile extends { name: string }, Row extends RecordRow> {
   recordSchema: z.ZodType
 }
 
-/** What can be asked of one saved record, and how a new one is made: the same for every kind of the fleet. */
+/** What can be asked of one saved record, and how a new one is made: the same for every kind. */
 export function recordRoutes<Profile extends { name: string }, Row extends RecordRow>({
   kind,
   createAccess,
@@ -24,9 +24,9 @@ export function recordRoutes<Profile extends { name: string }, Row extends Recor
   changeSchema,
   recordSchema,
 }: Options<Profile, Row>): RouteSpec[] {
-  const { noun } = kind
+  const { noun, plural = `${noun}s` } = kind
   const title = noun.charAt(0).toUpperCase() + noun.slice(1)
-  const path = `/api/v1/${noun}s`
+  const path = `/api/v1/${plural}`
   const params = z.strictObject({ [`${noun}Id`]: idSchema }).transform((given) => String(given[`${noun}Id`]))
   const atRecord = { path: `${path}/:${noun}Id`, params }
 

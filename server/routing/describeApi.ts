@@ -17,7 +17,7 @@ const refusalWords: Partial<Record<number, string>> = {
   409: 'Somebody changed it meanwhile, or a rule forbids it',
   410: 'The link is used, withdrawn or too old',
   413: 'The body is too large',
-  415: 'The body is not sent as application/json',
+  415: 'The body is not of the content type that is read here',
   422: 'Fields are unknown, missing, of the wrong type or out of range',
   429: 'Too many requests',
   503: 'Not possible just now',
@@ -49,8 +49,21 @@ function refusalsOf(spec: RouteSpec): number[] {
   if (isPermission(spec.access)) codes.push('forbidden', 'other-company')
   if (spec.method !== 'get') codes.push('cross-origin')
   if (spec.params) codes.push('not-found')
-  if (spec.body) codes.push('bad-json', 'body-too-large', 'wrong-content-type')
+  if (spec.body || spec.upload) codes.push('bad-json', 'body-too-large', 'wrong-content-type')
   return [...new Set(codes.map(statusOf))].sort((one, other) => one - other)
+}
+
+/** A file as it is, or as the one part of a form. */
+function describeUpload({ types }: NonNullable<RouteSpec['upload']>): object {
+  const binary = { schema: { type: 'string', format: 'binary' } }
+  const form = { type: 'object', properties: { file: binary.schema }, required: ['file'] }
+  return {
+    required: true,
+    content: {
+      ...Object.fromEntries(types.map((type) => [type, binary])),
+      'multipart/form-data': { schema: form },
+    },
+  }
 }
 
 function parametersOf(spec: RouteSpec): object[] {
@@ -100,6 +113,7 @@ export function describeApi(specs: readonly RouteSpec[], version: string): objec
         'x-access': spec.access,
         ...(parameters.length > 0 && { parameters }),
         ...(spec.body && { requestBody: { required: true, ...reference(spec.body, `${name}Request`) } }),
+        ...(spec.upload && { requestBody: describeUpload(spec.upload) }),
         responses: {
           [spec.status ?? 200]: { description: 'Done', ...content },
           ...Object.fromEntries(refusals),

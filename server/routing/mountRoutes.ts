@@ -88,7 +88,8 @@ function handlersOf(spec: RouteSpec, context: AppContext): RequestHandler[] {
     guard,
     // A body may take its time to arrive, and roles be taken away or the session be ended meanwhile.
     ...(spec.body ? [...jsonBody(spec.maxBodyBytes), guard] : []),
-    ...(spec.body && needsSession ? [stillSignedIn] : []),
+    ...(spec.upload ? [spec.upload.read, guard] : []),
+    ...((spec.body || spec.upload) && needsSession ? [stillSignedIn] : []),
     answerCall(spec, context),
   ]
 }

@@ -54,6 +54,8 @@ export interface RouteSpec<
   query?: Query
   body?: Body
   maxBodyBytes?: number
+  /** a body that is a file of one of these content types, in place of JSON: the handler finds it as request.body */
+  upload?: { types: readonly string[]; read: RequestHandler }
   /** 200 unless said */
   status?: number
   /** the shape of a JSON answer; absent where the answer has no body or is a file */

@@ -10,7 +10,7 @@ import type { ExportColumn, ExportTable } from '../tables/exportTable.ts'
 import { outletColumns, rigOwnColumns } from '../tables/rigColumns.ts'
 import type { RecordFields } from './records.ts'
 
-function column<Row>(
+export function column<Row>(
   heading: string,
   description: string,
   write: ExportColumn<Row>['write'],
@@ -19,7 +19,7 @@ function column<Row>(
 }
 
 /** Where a record stands; an import reads none of it but whether it is archived. */
-function recordColumns<Row extends RecordFields>(): ExportColumn<Row>[] {
+export function recordColumns<Row extends RecordFields>(): ExportColumn<Row>[] {
   return [
     column('id', 'the record’s own id', ({ id }) => id),
     column('version', 'how often it has been saved', ({ version }) => version),
@@ -95,6 +95,8 @@ export interface Names {
   compressor(id: string | null): string | null
   site(id: string | null): string | null
   rig(id: string | null): string | null
+  nozzle(id: string | null): string | null
+  medium(id: string | null): string | null
 }
 
 export function makeRigTable(rigs: RigRecord[], names: Names): ExportTable<RigRecord> {

@@ -18,10 +18,19 @@ import {
   makeTodayTable,
 } from './exportTables.ts'
 import type { Names } from './exportTables.ts'
+import {
+  makeBoreCheckTable,
+  makeEventTable,
+  makeGaugeTable,
+  makeMediaTable,
+  makeNozzleTable,
+  makeShiftTable,
+} from './exportWorkTables.ts'
 import { listRecords } from './records.ts'
 import type { Context } from './records.ts'
 import { rigKind } from './rigs.ts'
 import { siteKind } from './sites.ts'
+import { readWork } from './work.ts'
 
 const introduction = [
   'The company’s data, as it was at one moment.',
@@ -31,7 +40,7 @@ const introduction = [
   'compressors.csv and rigs.csv can be imported again, and so can any file with their headings. There a cell may say its',
   'own unit (375 cfm, 100 psi, 1 1/4 in, No. 6), and a heading may end with another: free_air_cfm, set_pressure_psi,',
   'hose_length_ft, nozzle_number. A text that a spreadsheet would run as a formula begins with an apostrophe.',
-  'What is deleted is not in here.',
+  'What is deleted is not in here. Photos are not in here either.',
   '',
   '',
 ].join('\r\n')
@@ -50,10 +59,17 @@ interface ZippedFile {
 function readFiles({ database, now }: Context, actor: Actor): ZippedFile[] {
   const { companyId, roles } = actor
   return database.transact((writer) => {
-    const compressors = listRecords(compressorKind, database, companyId)
-    const sites = listRecords(siteKind, database, companyId)
-    const rigs = listRecords(rigKind, database, companyId)
-    const names: Names = { compressor: nameBy(compressors), site: nameBy(sites), rig: nameBy(rigs) }
+    const compressors = listRecords(compressorKind, database, actor)
+    const sites = listRecords(siteKind, database, actor)
+    const rigs = listRecords(rigKind, database, actor)
+    const { nozzles, media, events, shifts, boreChecks, gaugeReadings } = readWork({ database }, actor)
+    const names: Names = {
+      compressor: nameBy(compressors),
+      site: nameBy(sites),
+      rig: nameBy(rigs),
+      nozzle: nameBy(nozzles),
+      medium: nameBy(media),
+    }
     const files: ZippedFile[] = []
     const about: string[] = [introduction]
     const add = <Row>(table: ExportTable<Row>) => {
@@ -68,6 +84,12 @@ function readFiles({ database, now }: Context, actor: Actor): ZippedFile[] {
     add(makeRigTable(rigs, names))
     add(makeOutletTable(rigs))
     add(makeTodayTable(database, companyId, names))
+    add(makeNozzleTable(nozzles, names))
+    add(makeEventTable(events, names))
+    add(makeMediaTable(media))
+    add(makeShiftTable(shifts, names))
+    add(makeBoreCheckTable(boreChecks, names))
+    add(makeGaugeTable(gaugeReadings, names))
     if (may(roles, 'read-audit')) {
       // It may be long, and is never changed: it is read while the others' requests go on.
       const log = writeAuditCsv(database, actor, {}, findAuditEnd(database, actor))

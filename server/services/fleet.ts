@@ -8,11 +8,11 @@ import { siteKind } from './sites.ts'
 import { listRecentPicks } from './today.ts'
 
 /** All that the screens compute verdicts from, as it was at one moment. */
-export function readFleet({ database, now }: Context, { companyId }: Pick<Actor, 'companyId'>): Fleet {
+export function readFleet({ database, now }: Context, reader: Pick<Actor, 'companyId'>): Fleet {
   return database.queries.transaction(() => ({
-    rigs: listRecords(rigKind, database, companyId),
-    compressors: listRecords(compressorKind, database, companyId),
-    sites: listRecords(siteKind, database, companyId),
-    today: listRecentPicks(database, companyId, now()),
+    rigs: listRecords(rigKind, database, reader),
+    compressors: listRecords(compressorKind, database, reader),
+    sites: listRecords(siteKind, database, reader),
+    today: listRecentPicks(database, reader.companyId, now()),
   }))
 }

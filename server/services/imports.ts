@@ -25,11 +25,11 @@ import { siteKind } from './sites.ts'
 
 const mostColumns = 300
 
-function refuseFile(errors: FieldError[]): ImportAnswer {
+export function refuseFile(errors: FieldError[]): ImportAnswer {
   return { rows: [], errors: errors.slice(0, maxFieldErrors), written: 0 }
 }
 
-interface Place {
+export interface Place {
   database: Database
   companyId: string
 }
@@ -41,7 +41,7 @@ interface File {
 }
 
 /** The file’s rows under the columns they belong to, or what is wrong with it as a whole. */
-function readFile<Profile>(csv: string, { columns }: RowReader<Profile>): File {
+export function readFile<Profile>(csv: string, { columns }: RowReader<Profile>): File {
   const { rows, error } = readTable(csv, recordLimits.importRows + 2)
   const [headings, ...body] = rows
   const refuse = (code: FieldError['code'], message: string): File => ({
@@ -157,13 +157,15 @@ function importRecords<Profile extends { name: string }, Row extends RecordRow>(
 }
 
 /** Finds a record by the name that a row gives it. */
-function findByName<Profile extends { name: string }, Row extends RecordRow>(
+export function findByName<Profile extends { name: string }, Row extends RecordRow>(
   { noun, queriesIn }: RecordKind<Profile, Row>,
   { database, companyId }: Place,
 ) {
   const byName = new Map(
     queriesIn(database)
       .names(companyId)
+      // Where two have one name, one of them is archived: the other one is meant.
+      .toSorted((one, other) => Number(one.archivedAt === null) - Number(other.archivedAt === null))
       .map((row) => [foldName(row.name), row]),
   )
   return (name: string) => {

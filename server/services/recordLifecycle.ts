@@ -22,7 +22,7 @@ function refuseReturn<Profile extends Named, Row extends RecordRow>(
 ): void {
   const taken = kind.queriesIn(database).names(row.companyId)
   const [fault] = [
-    ...findNameFault(kind.noun, taken, row),
+    ...findNameFault(kind, taken, { ...row, archivedAt: state.isArchived ? row.archivedAt : null }),
     ...(kind.findFaults?.(database, row.companyId, kind.toProfile(row), state) ?? []),
   ]
   if (fault) throw makeProblem('in-use', fault.message)
@@ -46,8 +46,8 @@ export function archiveRecord<Profile extends Named, Row extends RecordRow>(
 ): Profile & RecordFields {
   return context.database.transact((writer) => {
     const from = findListed(kind.queriesIn(context.database), actor.companyId, id)
-    refuseStale(kind, from, version)
-    if (from.archivedAt !== null) return toRecord(kind, from)
+    refuseStale(kind, from, version, actor)
+    if (from.archivedAt !== null) return toRecord(kind, from, actor)
     refuseUsed(kind, context, from, 'archive')
     const to = { archivedAt: context.now().toISOString() } as Partial<Row>
     return keep(kind, context, actor, { writer, from, to, as: 'archived' })
@@ -62,8 +62,8 @@ export function unarchiveRecord<Profile extends Named, Row extends RecordRow>(
 ): Profile & RecordFields {
   return context.database.transact((writer) => {
     const from = findListed(kind.queriesIn(context.database), actor.companyId, id)
-    refuseStale(kind, from, version)
-    if (from.archivedAt === null) return toRecord(kind, from)
+    refuseStale(kind, from, version, actor)
+    if (from.archivedAt === null) return toRecord(kind, from, actor)
     refuseReturn(kind, context, from, { isArchived: false })
     const to = { archivedAt: null } as Partial<Row>
     return keep(kind, context, actor, { writer, from, to, as: 'unarchived' })
@@ -79,7 +79,7 @@ export function deleteRecord<Profile extends Named, Row extends RecordRow>(
 ): void {
   context.database.transact((writer) => {
     const from = findListed(kind.queriesIn(context.database), actor.companyId, id)
-    refuseStale(kind, from, version)
+    refuseStale(kind, from, version, actor)
     refuseUsed(kind, context, from, 'delete')
     const to = { version, deletedAt: context.now().toISOString() } as Partial<Row>
     keep(kind, context, actor, { writer, from, to, as: 'deleted' })
@@ -96,9 +96,9 @@ export function restoreRecord<Profile extends Named, Row extends RecordRow>(
   return database.transact((writer) => {
     const queries = kind.queriesIn(database)
     const from = findRow(queries, actor.companyId, id)
-    refuseStale(kind, from, version)
-    if (from.deletedAt === null) return toRecord(kind, from)
-    refuseTooMany(kind.noun, queries.names(actor.companyId).length)
+    refuseStale(kind, from, version, actor)
+    if (from.deletedAt === null) return toRecord(kind, from, actor)
+    refuseTooMany(kind, queries.names(actor.companyId).length)
     refuseReturn(kind, context, from, { isArchived: from.archivedAt !== null })
     const to = { deletedAt: null } as Partial<Row>
     return keep(kind, context, actor, { writer, from, to, as: 'restored' })

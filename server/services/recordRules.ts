@@ -14,19 +14,34 @@ export function refuseFaults(faults: FieldError[]): void {
   throw makeProblem('invalid-fields', `${count} not as they should be.`, faults)
 }
 
-export function findNameFault(
-  noun: string,
-  taken: Pick<RecordRow, 'id' | 'name' | 'archivedAt'>[],
-  { id, name }: { id: string; name: string },
-): FieldError[] {
-  const folded = foldName(name)
-  const other = taken.find((one) => one.id !== id && foldName(one.name) === folded)
-  if (!other) return []
-  const which = other.archivedAt === null ? 'Another' : 'An archived'
-  return [{ path: '/name', code: 'name-in-use', message: `${which} ${noun} is called “${other.name}”.` }]
+interface Naming {
+  noun: string
+  nameField?: string
+  isNameFreedByArchiving?: boolean
 }
 
-export function refuseTooMany(noun: string, count: number): void {
+export function findNameFault(
+  { noun, nameField = 'name', isNameFreedByArchiving = false }: Naming,
+  taken: Pick<RecordRow, 'id' | 'name' | 'archivedAt'>[],
+  { id, name, archivedAt = null }: { id: string; name: string; archivedAt?: string | null },
+): FieldError[] {
+  const folded = foldName(name)
+  if (isNameFreedByArchiving && archivedAt !== null) return []
+  const other = taken.find(
+    (one) =>
+      one.id !== id && foldName(one.name) === folded && !(isNameFreedByArchiving && one.archivedAt !== null),
+  )
+  if (!other) return []
+  const which = other.archivedAt === null ? 'Another' : 'An archived'
+  return [
+    { path: `/${nameField}`, code: 'name-in-use', message: `${which} ${noun} is called “${other.name}”.` },
+  ]
+}
+
+export function refuseTooMany(
+  { noun, plural = `${noun}s` }: { noun: string; plural?: string },
+  count: number,
+): void {
   if (count < recordLimits.records) return
-  throw makeProblem('too-many-records', `A company has at most ${recordLimits.records} ${noun}s.`)
+  throw makeProblem('too-many-records', `A company has at most ${recordLimits.records} ${plural}.`)
 }

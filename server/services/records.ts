@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto'
 import type { AuditAction } from '#shared/contracts/people.ts'
+import { may } from '#shared/contracts/permissions.ts'
 import type { FieldError } from '#shared/contracts/problems.ts'
 import type { Actor } from '../actor.ts'
 import type { AppContext } from '../context.ts'
@@ -12,14 +13,27 @@ import type { RecordQueries, RecordRow } from './recordQueries.ts'
 import { findNameFault, refuseFaults, refuseTooMany } from './recordRules.ts'
 
 export type Context = Pick<AppContext, 'database' | 'now'>
-export type Author = Pick<Actor, 'accountId' | 'name' | 'companyId'>
+/** Whose roles decide what an answer shows; without any it shows no price. */
+export type Viewer = Partial<Pick<Actor, 'roles'>>
+export type Author = Pick<Actor, 'accountId' | 'name' | 'companyId'> & Viewer
+type Reader = Pick<Actor, 'companyId'> & Viewer
 
 /** What one kind of saved record adds to what they all share. */
 export interface RecordKind<Profile extends { name: string }, Row extends RecordRow> {
-  noun: 'compressor' | 'site' | 'rig'
+  noun: 'compressor' | 'site' | 'rig' | 'nozzle' | 'medium'
+  /** where the noun takes no s */
+  plural?: string
+  /** what people call its name */
+  nameField?: string
+  /** the name of an archived one may be given to another */
+  isNameFreedByArchiving?: boolean
+  /** only for who may see prices; in the audit for nobody */
+  priceFields?: readonly (keyof Profile & string)[]
   queriesIn(database: Database): RecordQueries<Row>
   toColumns(profile: Profile): Omit<Row, Exclude<keyof RecordRow, 'name'>>
   toProfile(row: Row): Profile
+  /** What is not in a body: worked out as the record is written, from how it stood. */
+  complete?(database: Database, companyId: string, profile: Profile, before: Row | null): Profile
   /** What only the database or the runtime can tell to be wrong, such as a compressor that is not there. */
   findFaults?(
     database: Database,
@@ -40,13 +54,24 @@ export interface RecordFields {
   updatedBy: string
 }
 
+function withoutPrices<Profile extends { name: string }, Row extends RecordRow>(
+  { priceFields = [] }: RecordKind<Profile, Row>,
+  profile: Profile,
+): Profile {
+  if (priceFields.length === 0) return profile
+  const hidden: readonly string[] = priceFields
+  return Object.fromEntries(Object.entries(profile).filter(([field]) => !hidden.includes(field))) as Profile
+}
+
 export function toRecord<Profile extends { name: string }, Row extends RecordRow>(
   kind: RecordKind<Profile, Row>,
   row: Row,
+  { roles = [] }: Viewer,
 ): Profile & RecordFields {
   const { id, version, archivedAt, createdAt, updatedAt, updatedBy } = row
+  const whole = kind.toProfile(row)
   return {
-    ...kind.toProfile(row),
+    ...(may(roles, 'see-prices') ? whole : withoutPrices(kind, whole)),
     id,
     version,
     isArchived: archivedAt !== null,
@@ -90,34 +115,34 @@ export function findListed<Row extends RecordRow>(
 export function readRecord<Profile extends { name: string }, Row extends RecordRow>(
   kind: RecordKind<Profile, Row>,
   { database }: Pick<Context, 'database'>,
-  actor: Pick<Actor, 'companyId'>,
+  actor: Reader,
   id: string,
 ): Profile & RecordFields {
-  return toRecord(kind, findListed(kind.queriesIn(database), actor.companyId, id))
+  return toRecord(kind, findListed(kind.queriesIn(database), actor.companyId, id), actor)
 }
 
 export function listRecords<Profile extends { name: string }, Row extends RecordRow>(
   kind: RecordKind<Profile, Row>,
   database: Database,
-  companyId: string,
+  reader: Reader,
 ): (Profile & RecordFields)[] {
   return kind
     .queriesIn(database)
-    .list(companyId)
-    .map((row) => toRecord(kind, row))
+    .list(reader.companyId)
+    .map((row) => toRecord(kind, row, reader))
 }
 
 export function listPage<Profile extends { name: string }, Row extends RecordRow>(
   kind: RecordKind<Profile, Row>,
   { database }: Pick<Context, 'database'>,
-  { companyId }: Pick<Actor, 'companyId'>,
+  reader: Reader,
   query: PageQuery,
 ): Page<Profile & RecordFields> {
   return readPage(query, (limit, after) =>
     kind
       .queriesIn(database)
-      .page(companyId, limit, after)
-      .map((row) => toRecord(kind, row)),
+      .page(reader.companyId, limit, after)
+      .map((row) => toRecord(kind, row, reader)),
   )
 }
 
@@ -126,13 +151,14 @@ export function insertRecord<Profile extends { name: string }, Row extends Recor
   kind: RecordKind<Profile, Row>,
   { database, writer, at }: { database: Database; writer: Writer; at: Date },
   author: Author,
-  { id, profile, isArchived = false }: { id: string; profile: Profile; isArchived?: boolean },
+  { id, profile: sent, isArchived = false }: { id: string; profile: Profile; isArchived?: boolean },
 ): Profile & RecordFields {
+  const profile = kind.complete?.(database, author.companyId, sent, null) ?? sent
   const shared = {
     companyId: author.companyId,
     id,
     version: 1,
-    creationHash: hashCreation({ ...profile, id }),
+    creationHash: hashCreation({ ...sent, id }),
     createdAt: at.toISOString(),
     updatedAt: at.toISOString(),
     updatedBy: author.name,
@@ -143,7 +169,7 @@ export function insertRecord<Profile extends { name: string }, Row extends Recor
   kind.queriesIn(database).insert(row)
   const action: AuditAction = `${kind.noun}.created`
   writeAudit(writer, author, at, { action, subject: profile.name, subjectId: id })
-  return toRecord(kind, row)
+  return toRecord(kind, row, author)
 }
 
 /** Creates the record once, however often the same body comes. */
@@ -165,12 +191,12 @@ export function createRecord<Profile extends { name: string }, Row extends Recor
       if (existing.deletedAt !== null) {
         throw makeProblem('id-in-use', `This ${kind.noun} has been deleted since; restore it instead.`)
       }
-      return toRecord(kind, existing)
+      return toRecord(kind, existing, actor)
     }
     const taken = queries.names(companyId)
-    refuseTooMany(kind.noun, taken.length)
+    refuseTooMany(kind, taken.length)
     refuseFaults([
-      ...findNameFault(kind.noun, taken, { id, name: profile.name }),
+      ...findNameFault(kind, taken, { id, name: profile.name }),
       ...(kind.findFaults?.(database, companyId, profile, { isArchived: false }) ?? []),
     ])
     return insertRecord(kind, { database, writer, at: now() }, actor, { id, profile })
@@ -193,17 +219,21 @@ export function keep<Profile extends { name: string }, Row extends RecordRow>(
     action: `${kind.noun}.${as}`,
     subject: next.name,
     subjectId: next.id,
-    changes: changesBetween(kind.toProfile(from), kind.toProfile(next)),
+    changes: changesBetween(
+      withoutPrices(kind, kind.toProfile(from)),
+      withoutPrices(kind, kind.toProfile(next)),
+    ),
   })
-  return toRecord(kind, next)
+  return toRecord(kind, next, actor)
 }
 
 export function refuseStale<Profile extends { name: string }, Row extends RecordRow>(
   kind: RecordKind<Profile, Row>,
   row: Row,
   version: number,
+  viewer: Viewer,
 ): void {
-  if (row.version !== version) throw makeVersionConflict(toRecord(kind, row))
+  if (row.version !== version) throw makeVersionConflict(toRecord(kind, row, viewer))
 }
 
 export function changeRecord<Profile extends { name: string }, Row extends RecordRow>(
@@ -211,18 +241,19 @@ export function changeRecord<Profile extends { name: string }, Row extends Recor
   context: Context,
   actor: Author,
   { id, version }: { id: string; version: number },
-  profile: Profile,
+  sent: Profile,
 ): Profile & RecordFields {
   const { database } = context
   const queries = kind.queriesIn(database)
   return database.transact((writer) => {
     const from = findListed(queries, actor.companyId, id)
-    refuseStale(kind, from, version)
+    refuseStale(kind, from, version, actor)
+    const profile = kind.complete?.(database, actor.companyId, sent, from) ?? sent
     const isRenamed = profile.name !== from.name
     const state = { isArchived: from.archivedAt !== null }
     refuseFaults([
       ...(isRenamed
-        ? findNameFault(kind.noun, queries.names(actor.companyId), { id, name: profile.name })
+        ? findNameFault(kind, queries.names(actor.companyId), { ...from, name: profile.name })
         : []),
       ...(kind.findFaults?.(database, actor.companyId, profile, state) ?? []),
     ])

@@ -98,13 +98,14 @@ function lineFactorFor(
  *   k         (ṁ + air taken first) / (FAD(p) ρd), where the compressor works under its set pressure
  *   line      s with p_compressor = march(ṁ, p_nozzle) when every φm f L/D + ΣK is multiplied by s
  *
- * Each range is what the two gauges' accuracies make of it, corner by corner. A drop that the gauges' accuracy could
+ * Each range is what the two gauges' accuracies make of it: the effect of each gauge at its ± (95 %) alone, added as
+ * squares because their errors are independent, so a range of 95 % too. A drop that the gauges' accuracy could
  * itself make, a nozzle reading over the compressor's, a regulator that holds: such readings cannot tell the machine
  * from the hoses, and move neither. At or over the set pressure the machine is throttled, so only the line is measured.
  *
  * Inputs   rig and site (SI) · readings Pa absolute, m
  * Result   both factors with their range, or why they were not moved
- * Errors   none        Checked  tests/shared/airflow/calibrate.test.ts
+ * Errors   none        Checked  tests/shared/airflow/calibrate.test.ts, tests/shared/work/calibration.test.ts
  */
 export function calibrate(rig: Rig, site: Site, readings: GaugeReadings): Calibration {
   const outletIndex = readings.outletIndex ?? 0
@@ -140,34 +141,31 @@ export function calibrate(rig: Rig, site: Site, readings: GaugeReadings): Calibr
   }
   if (entry >= outlet.regulatorGaugePa - nozzleAccuracy) return neither('regulator-acting')
 
-  const corners = [-1, 1].flatMap((c) =>
-    [-1, 1].map((n) => [c * compressorAccuracy, n * nozzleAccuracy] as const),
-  )
-  const ranged = (value: number, atCorners: number[], range: { min: number; max: number }) => {
-    const known = atCorners.filter((x) => !Number.isNaN(x))
+  /** Errors of the two gauges are independent: their effects, one gauge at a time, add as squares. */
+  const ranged = (factorAt: (c: number, n: number) => number, range: { min: number; max: number }) => {
+    const value = factorAt(compressorGauge, nozzleGauge)
     if (!(value >= range.min && value <= range.max)) return null
-    return { value, low: Math.min(value, ...known), high: Math.max(value, ...known) }
+    const off = (c: number, n: number) => factorAt(compressorGauge + c, nozzleGauge + n) - value
+    const effects = [
+      [off(-compressorAccuracy, 0), off(compressorAccuracy, 0)],
+      [off(0, -nozzleAccuracy), off(0, nozzleAccuracy)],
+    ].map((pair) => pair.filter((effect) => !Number.isNaN(effect)))
+    const reach = (sign: number) =>
+      Math.hypot(...effects.map((pair) => Math.max(0, ...pair.map((effect) => sign * effect))))
+    return { value, low: Math.max(0, value - reach(-1)), high: value + reach(1) }
   }
 
-  const lineFactor = ranged(
-    lineFactorFor(prepared, outletIndex, massFlow, nozzleGauge, compressorGauge),
-    corners.map(([c, n]) =>
-      lineFactorFor(prepared, outletIndex, flowAt(nozzleGauge + n), nozzleGauge + n, compressorGauge + c),
-    ),
-    lineFactorRange,
-  )
+  const lineFactor = ranged((c, n) => lineFactorFor(prepared, outletIndex, flowAt(n), n, c), lineFactorRange)
   const lineReason = lineFactor ? null : 'out-of-range'
 
   const setGauge = measured.compressor.setPressurePa - ambientPa
   if (compressorGauge >= setGauge - compressorAccuracy) {
     return { conditionFactor: null, conditionReason: 'compressor-at-set', lineFactor, lineReason }
   }
-  const conditionAt = (compressorGaugePa: number, nozzleGaugePa: number) =>
-    (flowAt(nozzleGaugePa) + prepared.firstMassFlow) /
-    (freeAirAt(measured.compressor, compressorGaugePa + ambientPa) * prepared.ambient.dryAirDensity)
   const conditionFactor = ranged(
-    conditionAt(compressorGauge, nozzleGauge),
-    corners.map(([c, n]) => conditionAt(compressorGauge + c, nozzleGauge + n)),
+    (c, n) =>
+      (flowAt(n) + prepared.firstMassFlow) /
+      (freeAirAt(measured.compressor, c + ambientPa) * prepared.ambient.dryAirDensity),
     conditionFactorRange,
   )
   return {

@@ -74,3 +74,23 @@ export const fleetLimits = {
   waterRateLPerMin: { min: 0.05, max: 200 },
   tankL: { min: 1, max: 50_000 },
 } as const satisfies Record<string, Range>
+
+/** What crews may write down. */
+export const workLimits = {
+  tagLength: 30,
+  threadLength: 40,
+  noteLength: 200,
+  hours: { min: 0, max: 100_000 },
+  shiftHours: { min: 0, max: 24 },
+  areaM2: { min: 0, max: 10_000 },
+  accuracyMm: { min: 0.005, max: 5 },
+  gaugeAccuracyKpa: { min: 0.1, max: 500 },
+  bulkDensityKgM3: { min: 100, max: 8000 },
+  mohsHardness: { min: 1, max: 10 },
+  /** shifts of one company, and as many of each other thing that is written down */
+  records: 20_000,
+  photoBytes: 10_000_000,
+  photoPixels: 40_000_000,
+  /** of one company's photos */
+  photoQuotaBytes: 500_000_000,
+} as const

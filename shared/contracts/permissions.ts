@@ -5,6 +5,8 @@ export type Role = (typeof roles)[number]
 export const permissions = {
   'see-rigs': ['blaster', 'estimator', 'owner', 'admin'],
   'pick-today': ['blaster', 'estimator', 'owner', 'admin'],
+  'log-work': ['blaster', 'estimator', 'owner', 'admin'],
+  'set-calibration-aside': ['owner'],
   'add-sites': ['blaster', 'estimator', 'owner'],
   'see-prices': ['estimator', 'owner'],
   'write-fleet': ['owner'],

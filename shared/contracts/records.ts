@@ -40,6 +40,18 @@ export const localDateSchema = z.iso
     params: { code: 'invalid' },
   })
 
+/** When something was done, with the offset of the clock it was read from, such as 2026-05-03T14:10:00-06:00. */
+export const instantSchema = z.iso
+  .datetime({
+    offset: true,
+    error: 'This must be a time with its offset, such as 2026-05-03T14:10:00-06:00.',
+    abort: true,
+  })
+  .refine((text) => text >= '1990' && text < '2200', {
+    error: 'This must be a time from 1990 to 2199.',
+    params: { code: 'invalid' },
+  })
+
 /** An address to write to. Its case says nothing, so it is kept small. */
 export const emailSchema = z
   .string()

@@ -123,7 +123,10 @@ describe('the company’s data', () => {
     const owner = makeOwner()
     await fillFleet(owner)
     const files = await exportOf(owner)
-    const tables = ['company', 'people', 'compressors', 'sites', 'rigs', 'rig_outlets', 'todays_picks']
+    const tables = [
+      ...['company', 'people', 'compressors', 'sites', 'rigs', 'rig_outlets', 'todays_picks'],
+      ...['nozzles', 'nozzle_events', 'media', 'shifts', 'bore_checks', 'gauge_readings'],
+    ]
     expect([...files.keys()].sort()).toEqual([...tables.map((name) => `${name}.csv`), 'readme.txt'].sort())
     const readme = files.get('readme.txt')!
     for (const name of tables) {

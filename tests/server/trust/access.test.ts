@@ -38,9 +38,9 @@ describe('who may do what', () => {
 
   const cases = accessTable.flatMap((row) => callers.map((caller) => [row.route, caller, row] as const))
   it.each(cases)('%s: %s', async (_route, caller, row) => {
-    const { path, body } = await row.ask(world, caller)
+    const { path, body, file } = await row.ask(world, caller)
     const [method = ''] = row.route.split(' ')
-    const ask = world.askAs(caller)
+    const ask = file ? world.sendAs(caller, file) : world.askAs(caller)
     const writes = world.countWrites()
     const response = await ask(method, path, body)
     const expected = statusFor(row, caller)

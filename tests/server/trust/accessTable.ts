@@ -1,13 +1,24 @@
 import { randomUUID } from 'node:crypto'
+import type { RigRecord } from '#shared/contracts/rigs.ts'
 import type { Role } from '#shared/contracts/permissions.ts'
 import { makeCheckRequest } from '../../support/checkRequest.ts'
 import { changeOf, makeCompressorBody, makeRigBody, makeSiteBody } from '../../support/fleet.ts'
-import type { AccessWorld, Caller } from './accessWorld.ts'
-import { oldPassword } from './accessWorld.ts'
+import {
+  makeBoreCheckBody,
+  makeEventBody,
+  makeGaugeReadingBody,
+  makeMediumBody,
+  makeNozzleBody,
+  makeShiftBody,
+} from '../../support/work.ts'
+import type { AccessWorld, Caller, Noun } from './accessWorld.ts'
+import { oldPassword, onePixel, pluralOf } from './accessWorld.ts'
 
 export interface Asked {
   path: string
   body?: unknown
+  /** a body that is no JSON, with its content type */
+  file?: { type: string; content: Uint8Array<ArrayBuffer> }
 }
 
 /**
@@ -28,6 +39,8 @@ export interface AccessRow {
 /* DESIGN.md, section 6, line by line. */
 const seesRigs: Role[] = ['blaster', 'estimator', 'owner', 'admin']
 const picksToday: Role[] = ['blaster', 'estimator', 'owner', 'admin']
+const logsWork: Role[] = ['blaster', 'estimator', 'owner', 'admin']
+const setsCalibrationAside: Role[] = ['owner']
 const addsSites: Role[] = ['blaster', 'estimator', 'owner']
 const writesFleet: Role[] = ['owner']
 const managesPeople: Role[] = ['admin']
@@ -42,12 +55,114 @@ const companyInput = { name: 'Another one', currency: 'USD', language: 'en', tim
 const newPassword = 'gravel under a tarp'
 const noToken = { token: 'nobody-was-ever-given-this-one' }
 
-type Noun = 'rig' | 'compressor' | 'site'
-const bodyMakers = { rig: makeRigBody, compressor: makeCompressorBody, site: makeSiteBody }
+const bodyMakers = {
+  rig: makeRigBody,
+  compressor: makeCompressorBody,
+  site: makeSiteBody,
+  nozzle: makeNozzleBody,
+  medium: makeMediumBody,
+}
+
+/** A record as a change sends it back, under another name. */
+function renamed(noun: Noun, record: RigRecord) {
+  const name = `Ours, changed ${randomUUID()}`
+  if (noun !== 'nozzle') return changeOf(record, { name })
+  const { photoId: _photoId, name: _name, ...change } = changeOf(record) as Record<string, unknown>
+  return { ...change, tag: name.slice(0, 30) }
+}
+
+/** What crews write down, each of a yard of the caller’s own company. */
+const workRows: AccessRow[] = [
+  { route: 'GET /api/v1/work', may: seesRigs, status: 200, ask: at('/api/v1/work') },
+  { route: 'GET /api/v1/shifts', may: seesRigs, status: 200, ask: at('/api/v1/shifts') },
+  {
+    route: 'POST /api/v1/nozzles/unknown',
+    may: logsWork,
+    status: 201,
+    ask: at('/api/v1/nozzles/unknown', () => ({
+      id: randomUUID(),
+      shape: 'venturi',
+      boxRigId: null,
+      photoId: null,
+    })),
+  },
+  {
+    route: 'POST /api/v1/nozzle-events',
+    may: logsWork,
+    status: 201,
+    ask: async (world, caller) => ({
+      path: '/api/v1/nozzle-events',
+      body: makeEventBody({ nozzleId: (await world.makeYard(caller)).nozzleId }),
+    }),
+  },
+  {
+    route: 'POST /api/v1/shifts',
+    may: logsWork,
+    status: 201,
+    ask: async (world, caller) => ({
+      path: '/api/v1/shifts',
+      body: makeShiftBody({ rigId: (await world.makeYard(caller)).rigId }),
+    }),
+  },
+  {
+    route: 'POST /api/v1/bore-checks',
+    may: logsWork,
+    status: 201,
+    ask: async (world, caller) => ({
+      path: '/api/v1/bore-checks',
+      body: makeBoreCheckBody({ nozzleId: (await world.makeYard(caller)).nozzleId }),
+    }),
+  },
+  {
+    route: 'POST /api/v1/gauge-readings',
+    may: logsWork,
+    status: 201,
+    ask: async (world, caller) => {
+      const { rigId, compressorId, siteId } = await world.makeYard(caller)
+      return {
+        path: '/api/v1/gauge-readings',
+        body: makeGaugeReadingBody({ rigId, compressorId, siteId }),
+      }
+    },
+  },
+  {
+    route: 'PUT /api/v1/gauge-readings/:readingId/set-aside',
+    may: setsCalibrationAside,
+    status: 200,
+    isOurs: true,
+    ask: async (world) => {
+      const { rigId, compressorId, siteId, save } = await world.makeYard('owner')
+      const { id } = await save('gauge-readings', makeGaugeReadingBody({ rigId, compressorId, siteId }))
+      return { path: `/api/v1/gauge-readings/${id}/set-aside`, body: { isSetAside: true } }
+    },
+  },
+  {
+    route: 'POST /api/v1/photos',
+    may: logsWork,
+    status: 201,
+    ask: () => ({
+      path: `/api/v1/photos?id=${randomUUID()}`,
+      file: { type: 'image/png', content: onePixel },
+    }),
+  },
+  {
+    route: 'GET /api/v1/photos/:photoId',
+    may: seesRigs,
+    status: 200,
+    isOurs: true,
+    ask: async (world) => ({ path: `/api/v1/photos/${await world.makePhoto()}` }),
+  },
+  {
+    route: 'POST /api/v1/history/import',
+    may: writesFleet,
+    status: 200,
+    ask: at('/api/v1/history/import', () => ({ csv: 'date\n', isPreview: true })),
+  },
+]
 
 /** What can be done with one kind of record. */
 function recordRows(noun: Noun, mayCreate: Role[]): AccessRow[] {
-  const path = `/api/v1/${noun}s`
+  const path = `/api/v1/${pluralOf(noun)}`
   const one = `${path}/:${noun}Id`
   const ofOurs = { isOurs: true, status: 200 }
   const move = (verb: string, before?: string): AccessRow => ({
@@ -76,7 +191,7 @@ function recordRows(noun: Noun, mayCreate: Role[]): AccessRow[] {
         const record = await world.makeRecord(noun)
         return {
           path: `${path}/${record.id}`,
-          body: changeOf(record, { name: `Ours, changed ${randomUUID()}` }),
+          body: renamed(noun, record),
         }
       },
     },
@@ -224,6 +339,9 @@ export const accessTable: readonly AccessRow[] = [
   ...recordRows('rig', writesFleet),
   ...recordRows('compressor', writesFleet),
   ...recordRows('site', addsSites),
+  ...recordRows('nozzle', writesFleet),
+  ...recordRows('medium', writesFleet),
+  ...workRows,
   {
     route: 'PUT /api/v1/rigs/:rigId/today',
     may: picksToday,

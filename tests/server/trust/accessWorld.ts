@@ -5,6 +5,7 @@ import { roles } from '#shared/contracts/permissions.ts'
 import type { Role } from '#shared/contracts/permissions.ts'
 import { companies, memberships } from '../../../server/db/schema/index.ts'
 import { makeCompressorBody, makeRigBody, makeSiteBody } from '../../support/fleet.ts'
+import { makeMediumBody, makeNozzleBody, makeYard, save } from '../../support/work.ts'
 import { askWith, makeCompany, makePerson, makeSessionCookie } from '../../support/people.ts'
 import type { TestCompany, TestPerson } from '../../support/people.ts'
 import { startServer } from '../../support/server.ts'
@@ -22,7 +23,22 @@ type SignedInCaller = Exclude<Caller, 'nobody'>
 const rolesOfCaller = (caller: SignedInCaller): readonly Role[] =>
   caller === 'all' || caller === 'let-go' || caller === 'stranger' ? roles : [caller]
 
-const makers = { rig: makeRigBody, compressor: makeCompressorBody, site: makeSiteBody }
+const makers = {
+  rig: makeRigBody,
+  compressor: makeCompressorBody,
+  site: makeSiteBody,
+  nozzle: makeNozzleBody,
+  medium: makeMediumBody,
+}
+export type Noun = keyof typeof makers
+export const pluralOf = (noun: Noun) => (noun === 'medium' ? 'media' : `${noun}s`)
+
+export const onePixel = new Uint8Array(
+  Buffer.from(
+    'iVBORw0KGgoAAAANSUhEUgAAAAEAAAABCAIAAACQd1PeAAAADElEQVR4nGPYYqMBAALAARlH/1QeAAAAAElFTkSuQmCC',
+    'base64',
+  ),
+)
 
 /** Two companies, their people, and fresh things of ours to try one's hand at. */
 export class AccessWorld {
@@ -62,6 +78,17 @@ export class AccessWorld {
     return askWith(this.server.address, caller === 'nobody' ? undefined : this.makeCookie(caller))
   }
 
+  /** The same, of a body that is no JSON. */
+  sendAs(caller: Caller, { type, content }: { type: string; content: Uint8Array<ArrayBuffer> }) {
+    const cookie = caller === 'nobody' ? undefined : this.makeCookie(caller)
+    return (method: string, path: string): Promise<Response> =>
+      fetch(this.server.address + path, {
+        method,
+        headers: { 'content-type': type, ...(cookie && { cookie }) },
+        body: content,
+      })
+  }
+
   makeCookie(caller: SignedInCaller): string {
     const { accountId, company } = this.people[caller]
     return makeSessionCookie(this.server, accountId, company.id)
@@ -74,9 +101,9 @@ export class AccessWorld {
   }
 
   /** A record of ours as the API answers it, perhaps archived or deleted. */
-  async makeRecord(noun: keyof typeof makers, before?: string): Promise<RigRecord> {
+  async makeRecord(noun: Noun, before?: string): Promise<RigRecord> {
     const { ask } = this.keeper
-    const path = `/api/v1/${noun}s`
+    const path = `/api/v1/${pluralOf(noun)}`
     const body = makers[noun]({ name: `${oursMark} ${randomUUID()}` })
     const made = await this.expectOk(await ask('POST', path, body))
     const record = (await made.json()) as RigRecord
@@ -92,6 +119,23 @@ export class AccessWorld {
   /** A membership of ours, for an admin to change. */
   makeColleague(): string {
     return makePerson(this.server, this.ours, ['blaster'], { name: oursMark }).membershipId
+  }
+
+  /** A rig, a nozzle and all else that work is written down of: ours, or of the other company for one of theirs. */
+  async makeYard(caller: Caller) {
+    const owner = caller === 'stranger' ? { ask: this.askAs(caller) } : this.keeper
+    const yard = await makeYard(owner)
+    return { ...yard, save: (path: string, body: object) => save<{ id: string }>(owner, path, body) }
+  }
+
+  /** A photo of ours: 1 px, as any drawing program writes one. */
+  async makePhoto(): Promise<string> {
+    const id = randomUUID()
+    const { cookie } = this.keeper
+    const headers = { cookie, 'content-type': 'image/png' }
+    const path = `${this.server.address}/api/v1/photos?id=${id}`
+    await this.expectOk(await fetch(path, { method: 'POST', headers, body: onePixel }))
+    return id
   }
 
   async makeInvitation(): Promise<string> {
@@ -111,9 +155,9 @@ export class AccessWorld {
     return this.server.database.connection.prepare('select total_changes()').pluck().get() as number
   }
 
-  private versionOf(noun: string, id: string): number {
+  private versionOf(noun: Noun, id: string): number {
     return this.server.database.connection
-      .prepare(`select version from ${noun}s where id = ?`)
+      .prepare(`select version from ${pluralOf(noun)} where id = ?`)
       .pluck()
       .get(id) as number
   }
