@@ -1,4 +1,5 @@
 import { readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { availableParallelism } from 'node:os'
 import { join } from 'node:path'
 import { brotliCompressSync, constants, gzipSync } from 'node:zlib'
 import { pathToFileURL } from 'node:url'
@@ -170,6 +171,8 @@ export default defineConfig({
     },
   },
   test: {
+    // One a core, where by itself it would leave one to whoever works beside it.
+    maxWorkers: availableParallelism(),
     projects: [
       {
         extends: true,

@@ -33,6 +33,7 @@ export const photoRoutes = [
       response.type('image/jpeg')
       // It never changes, but who may see it does: each time it is asked for, and sent only once.
       response.set('Cache-Control', 'private, no-cache')
+      response.set('ETag', `"${photoId}"`)
       await new Promise<void>((resolve, reject) => {
         response.sendFile(
           fileName,

@@ -101,9 +101,12 @@ if (!(await seeToChromium())) process.exit(1)
 const reportDir = mkdtempSync(join(tmpdir(), 'sixteenth-test-'))
 const durations = []
 const steps = {
-  format: () => checkOnce(...node('prettier/bin/prettier.cjs', '--check', '--log-level', 'warn', '.')),
-  lint: () => checkOnce(...node('eslint/bin/eslint.js', '.', '--max-warnings', '0')),
-  types: () => checkOnce(...node('vue-tsc/bin/vue-tsc.js', '--build')),
+  'format, lint and types': () =>
+    Promise.all([
+      checkOnce(...node('prettier/bin/prettier.cjs', '--check', '--log-level', 'warn', '.')),
+      checkOnce(...node('eslint/bin/eslint.js', '.', '--max-warnings', '0')),
+      checkOnce(...node('vue-tsc/bin/vue-tsc.js', '--build')),
+    ]),
   'unit and API': () => runVitest(reportDir),
   build: buildClient,
   browser: () => runPlaywright(reportDir),
